@@ -1,0 +1,88 @@
+"""Ranges of published relations, held as data that the code obeys.
+
+Each relation owns one ``Validity``. The check of a case, the methods page and the record all read
+the same object, so a range cannot say one thing in prose and another in code. A range that the
+source does not state is written as ``stated=False`` and shown as "none stated": unstated is not
+unlimited.
+"""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+Floats = NDArray[np.float64]
+
+
+@dataclass(frozen=True)
+class Range:
+    """One dimensionless (or dimensioned, then ``unit`` says so) bound of a published relation."""
+
+    symbol: str
+    meaning: str
+    low: float | None = None
+    high: float | None = None
+    low_open: bool = False
+    high_open: bool = False
+    unit: str = ""
+    stated: bool = True
+
+    def holds(self, value: Floats | float) -> NDArray[np.bool_]:
+        """True where the value lies inside; NaN lies outside."""
+        v = np.asarray(value, dtype=float)
+        inside = ~np.isnan(v)
+        if self.low is not None:
+            inside &= (v > self.low) if self.low_open else (v >= self.low)
+        if self.high is not None:
+            inside &= (v < self.high) if self.high_open else (v <= self.high)
+        return inside
+
+
+@dataclass(frozen=True)
+class Validity:
+    """Where one published relation holds, who published it, and how exact it says it is."""
+
+    relation: str
+    source: str
+    accuracy: str
+    ranges: tuple[Range, ...]
+    witness: str = ""
+    """How the coefficients were confirmed here: read in the source, or recalled and confirmed by
+    which independent computation."""
+
+    def holds(self, values: Mapping[str, Floats | float]) -> NDArray[np.bool_]:
+        """True where every range holds. ``values`` maps each symbol to its value."""
+        inside = np.asarray(True)
+        for r in self.ranges:
+            inside = inside & r.holds(values[r.symbol])
+        return inside
+
+    def marks(self, values: Mapping[str, float]) -> tuple["Mark", ...]:
+        """The ranges that one single case leaves, in words; empty when it is inside all."""
+        return tuple(
+            Mark(self.relation, r, float(values[r.symbol]), self.source)
+            for r in self.ranges
+            if not bool(r.holds(values[r.symbol]))
+        )
+
+
+@dataclass(frozen=True)
+class Mark:
+    """One value that lies outside the range of one relation."""
+
+    relation: str
+    range: Range
+    value: float
+    source: str
+
+    def sentence(self) -> str:
+        """The mark in words, for outcome, page and record."""
+        r = self.range
+        low = "" if r.low is None else f"{r.low:g} {'<' if r.low_open else '≤'} "
+        high = "" if r.high is None else f" {'<' if r.high_open else '≤'} {r.high:g}"
+        unit = f" {r.unit}" if r.unit else ""
+        return (
+            f"{r.meaning} ({r.symbol}) is {self.value:.4g}{unit}; {self.relation} is published for "
+            f"{low}{r.symbol}{high}{unit}. An engineer decides."
+        )
