@@ -88,9 +88,7 @@ def require(person: Person, site: Site, need: str) -> None:
         raise not_permitted(NEED_SENTENCES[need])
 
 
-def _one(
-    rows: QuerySet[M], site_path: str, person: Person, pk: Any, need: str, what: str
-) -> M:
+def _one(rows: QuerySet[M], site_path: str, person: Person, pk: Any, need: str, what: str) -> M:
     try:
         row = rows.get(pk=pk, **{f"{site_path}__in": sites_of(person)})
     except (rows.model.DoesNotExist, ValueError, OverflowError):
@@ -154,9 +152,7 @@ def photo_for(person: Person, pk: Any, need: str = "see") -> Photo:
 
 
 def assessment_for(person: Person, pk: Any, need: str = "see") -> Assessment:
-    rows = Assessment.objects.select_related(
-        "location__component__site", "crack", "basis", "leaf"
-    )
+    rows = Assessment.objects.select_related("location__component__site", "crack", "basis", "leaf")
     return _one(rows, "location__component__site", person, pk, need, "proposal")
 
 

@@ -46,7 +46,9 @@ def not_permitted(sentence: str) -> Refusal:
     return Refusal("not-permitted", sentence, status=403)
 
 
-def conflict(code: str, sentence: str, fields: Mapping[str, Sequence[str]] | None = None) -> Refusal:
+def conflict(
+    code: str, sentence: str, fields: Mapping[str, Sequence[str]] | None = None
+) -> Refusal:
     return Refusal(code, sentence, fields=fields, status=409)
 
 

@@ -49,9 +49,7 @@ class Location(models.Model):
             models.UniqueConstraint(fields=["component", "number"], name="location_number_once"),
             models.CheckConstraint(
                 condition=models.Q(picture_x__isnull=True, picture_y__isnull=True)
-                | models.Q(
-                    picture_x__gte=0, picture_x__lte=1, picture_y__gte=0, picture_y__lte=1
-                ),
+                | models.Q(picture_x__gte=0, picture_x__lte=1, picture_y__gte=0, picture_y__lte=1),
                 name="location_mark_on_picture",
             ),
         ]

@@ -110,9 +110,7 @@ class Deferral(ActRow):
     request = models.OneToOneField(
         DeferralRequest, on_delete=models.PROTECT, related_name="deferral"
     )
-    disposition = models.ForeignKey(
-        Disposition, on_delete=models.PROTECT, related_name="deferrals"
-    )
+    disposition = models.ForeignKey(Disposition, on_delete=models.PROTECT, related_name="deferrals")
     by = models.ForeignKey("logbook.Person", on_delete=models.PROTECT, related_name="+")
     licence = models.ForeignKey(Licence, on_delete=models.PROTECT, related_name="+")
     new_on = models.DateField()

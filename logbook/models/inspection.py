@@ -69,9 +69,7 @@ class Finding(ActRow):
     why = models.TextField(blank=True)
     part_not_seen = models.TextField(blank=True)
     remarks = models.TextField(blank=True)
-    crack = models.ForeignKey(
-        Crack, null=True, on_delete=models.PROTECT, related_name="findings"
-    )
+    crack = models.ForeignKey(Crack, null=True, on_delete=models.PROTECT, related_name="findings")
 
     class Meta(ActRow.Meta):
         indexes = [models.Index(fields=["location", "-id"])]
@@ -80,9 +78,7 @@ class Finding(ActRow):
                 condition=models.Q(what__in=What.values), name="finding_what_known"
             ),
             models.CheckConstraint(
-                condition=models.Q(
-                    what__in=[What.CRACK, What.KNOWN_NOT_SEEN], crack__isnull=False
-                )
+                condition=models.Q(what__in=[What.CRACK, What.KNOWN_NOT_SEEN], crack__isnull=False)
                 | models.Q(what__in=[What.NOTHING, What.COULD_NOT_LOOK], crack__isnull=True),
                 name="finding_crack_named",
             ),

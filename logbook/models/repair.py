@@ -38,9 +38,7 @@ class Repair(ActRow):
         constraints = [
             models.CheckConstraint(
                 condition=models.Q(closes=True)
-                | (
-                    models.Q(start_length_mm__gt=0) | models.Q(start_depth_mm__gt=0)
-                )
+                | (models.Q(start_length_mm__gt=0) | models.Q(start_depth_mm__gt=0))
                 & ~models.Q(start_source=""),
                 name="repair_closes_or_starts_anew",
             )

@@ -34,9 +34,7 @@ class Standing(models.Model):
     disposition = models.ForeignKey(
         Disposition, null=True, on_delete=models.PROTECT, related_name="+"
     )
-    last_finding = models.ForeignKey(
-        Finding, null=True, on_delete=models.PROTECT, related_name="+"
-    )
+    last_finding = models.ForeignKey(Finding, null=True, on_delete=models.PROTECT, related_name="+")
     verdict = models.CharField(max_length=12, choices=Verdict.choices)
     held = models.BooleanField(help_text="not to be used until signed, repaired or decided")
     due_on = models.DateField(null=True)

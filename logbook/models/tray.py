@@ -18,9 +18,7 @@ class TrayItem(ActRow):
     at = models.DateTimeField()
 
     class Meta(ActRow.Meta):
-        constraints = [
-            models.UniqueConstraint(fields=["key", "content_digest"], name="tray_once")
-        ]
+        constraints = [models.UniqueConstraint(fields=["key", "content_digest"], name="tray_once")]
 
 
 class TraySettled(ActRow):
