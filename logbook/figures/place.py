@@ -1,0 +1,91 @@
+"""Where words can stand in a figure without covering what is drawn."""
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+
+from .layers import Chart, Point, View, plated, text_width
+
+
+@dataclass(frozen=True)
+class Rect:
+    """In px, from the view's bottom left."""
+
+    left: float
+    bottom: float
+    right: float
+    top: float
+
+    def covers(self, other: "Rect") -> float:
+        """The area that both share, px²."""
+        wide = min(self.right, other.right) - max(self.left, other.left)
+        tall = min(self.top, other.top) - max(self.bottom, other.bottom)
+        return max(wide, 0.0) * max(tall, 0.0)
+
+
+@dataclass(frozen=True)
+class Place:
+    """A place for words: an anchor in data units, the side they run to, and an offset in px."""
+
+    at: Point
+    align: str
+    dx: float = 0
+    dy: float = 0
+
+
+class Plan:
+    """What is taken in a view; words go to the first place that is free, or the least taken."""
+
+    def __init__(self, view: View) -> None:
+        self.view = view
+        self.taken: list[Rect] = []
+        # Plates lie over hatch and under every stroke; words lie over all.
+        self.plates: list[Chart] = []
+        self.words: list[Chart] = []
+
+    def px(self, at: Point) -> Point:
+        return (
+            (at[0] - self.view.x[0]) / self.view.px_x,
+            (at[1] - self.view.y[0]) / self.view.px_y,
+        )
+
+    def take_point(self, at: Point, reach: float = 7) -> None:
+        x, y = self.px(at)
+        self.taken.append(Rect(x - reach, y - reach, x + reach, y + reach))
+
+    def take_line(self, points: Iterable[Point], reach: float = 3) -> None:
+        """A line by the points along it, six px apart at most."""
+        spots = [self.px(point) for point in points]
+        for (x1, y1), (x2, y2) in zip(spots, spots[1:], strict=False):
+            parts = max(1, round(max(abs(x2 - x1), abs(y2 - y1)) / 6))
+            for n in range(parts + 1):
+                x, y = x1 + (x2 - x1) * n / parts, y1 + (y2 - y1) * n / parts
+                self.taken.append(Rect(x - reach, y - reach, x + reach, y + reach))
+
+    def put(self, text: str | Sequence[str], places: Sequence[Place], **mark: str) -> None:
+        """The words on a plate, at the best of the places; that ground is then taken."""
+        lines = [text] if isinstance(text, str) else list(text)
+        wide = max(text_width(line, mark.get("fontWeight") == "bold") for line in lines) + 8
+        tall = 18.0 * len(lines) + 2
+        best = min(places, key=lambda place: self._cost(self._rect(place, wide, tall)))
+        self.taken.append(self._rect(best, wide, tall))
+        plate, text_on_it = plated(
+            self.view, best.at, lines, align=best.align, dx=best.dx, dy=best.dy, **mark
+        )
+        self.plates.append(plate)
+        self.words.append(text_on_it)
+
+    def _rect(self, place: Place, wide: float, tall: float) -> Rect:
+        x, y = self.px(place.at)
+        x, y = x + place.dx, y - place.dy
+        left = {"left": x - 4, "center": x - wide / 2, "right": x - wide + 4}[place.align]
+        return Rect(left, y - tall / 2, left + wide, y + tall / 2)
+
+    def _cost(self, rect: Rect) -> float:
+        covered = sum(rect.covers(other) for other in self.taken)
+        outside = (
+            max(0.0, -rect.left)
+            + max(0.0, rect.right - self.view.width)
+            + max(0.0, -rect.bottom)
+            + max(0.0, rect.top - self.view.height)
+        )
+        return covered + 100 * outside
