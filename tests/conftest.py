@@ -1,0 +1,39 @@
+"""What every test shares: its own data folder, and the triggers lifted around each flush."""
+
+import os
+import tempfile
+
+# Before Django is set up: tests never touch the data of the checkout.
+_folder = tempfile.TemporaryDirectory(prefix="logbook-tests-")
+os.environ["LOGBOOK_DATA"] = _folder.name
+os.environ["LOGBOOK_MODE"] = "trial"
+os.environ.setdefault("DJANGO_ALLOW_ASYNC_UNSAFE", "true")
+
+import pytest  # noqa: E402
+
+
+@pytest.fixture(scope="session", autouse=True)
+def _triggers_lifted_around_flush() -> None:
+    """A flush empties the tables between tests, which the triggers would refuse. ``post_migrate``,
+    which flush sends at its end, puts them back."""
+    from django.core.management.commands import flush
+
+    from logbook.journal import triggers
+
+    wrapped = flush.Command.handle
+
+    def handle(self: flush.Command, **options: object) -> object:
+        triggers.remove(str(options["database"]))
+        return wrapped(self, **options)
+
+    flush.Command.handle = handle  # type: ignore[method-assign]
+
+
+def pytest_collection_modifyitems(items: list[pytest.Item]) -> None:
+    """Mark what touches the database, so that the second run takes those alone."""
+    for item in items:
+        fixtures = set(getattr(item, "fixturenames", ()))
+        if fixtures & {"db", "transactional_db", "live_server"} or item.get_closest_marker(
+            "django_db"
+        ):
+            item.add_marker(pytest.mark.database)
