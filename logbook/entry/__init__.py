@@ -1,0 +1,16 @@
+"""Text and units become one frozen draft, checked once."""
+
+from .draft import FindingDraft, InspectionDraft, NewLocation, Sizes
+from .inspection import read_inspection
+from .known import Known, KnownCrack, KnownLocation
+
+__all__ = [
+    "FindingDraft",
+    "InspectionDraft",
+    "Known",
+    "KnownCrack",
+    "KnownLocation",
+    "NewLocation",
+    "Sizes",
+    "read_inspection",
+]

@@ -17,6 +17,7 @@ class Inspection(ActRow):
     in_book_at = models.DateTimeField()
     counter = models.DecimalField(max_digits=14, decimal_places=3)
     counter_replaced_why = models.TextField(blank=True)
+    late_why = models.TextField(blank=True, help_text="why an older look is written only now")
     method = models.CharField(max_length=60)
     procedure = models.CharField(max_length=60)
     procedure_revision = models.CharField(max_length=24)

@@ -1,0 +1,70 @@
+"""Reading what people type: decimal comma or point, dates, plain lines."""
+
+import datetime
+import re
+import uuid
+from decimal import Decimal
+
+NUMBER = re.compile(r"^\d{1,9}(?:[.,]\d+)?$")
+SPACES = re.compile(r"[\s\u00a0\u2009\u202f]")
+
+
+class Unreadable(ValueError):
+    """The sentence that stands beside the field."""
+
+
+def decimal(text: object, *, places: int = 3) -> Decimal:
+    """A number as typed, exact. Comma and point both read; a sign of thousands does not."""
+    if isinstance(text, bool) or not isinstance(text, str | int | float | Decimal):
+        raise Unreadable("Write a number, such as 8.4.")
+    bare = SPACES.sub("", str(text))
+    if "." in bare and "," in bare:
+        raise Unreadable(f'"{text}" has both comma and point. Write it without a thousands sign.')
+    if not NUMBER.match(bare):
+        raise Unreadable(f'"{text}" is not a number. Write it in digits, such as 8.4 or 8,4.')
+    value = Decimal(bare.replace(",", "."))
+    if -int(value.as_tuple().exponent) > places:
+        raise Unreadable(f"Write at most {places} digits behind the decimal sign.")
+    return value
+
+
+def date(text: object) -> datetime.date:
+    """An ISO date."""
+    if isinstance(text, datetime.date) and not isinstance(text, datetime.datetime):
+        return text
+    try:
+        return datetime.date.fromisoformat(str(text).strip())
+    except ValueError:
+        raise Unreadable("Write the date as year-month-day, such as 2026-05-04.") from None
+
+
+def moment(text: object) -> datetime.datetime:
+    """A time with its offset, as the tablet's clock gave it."""
+    try:
+        value = datetime.datetime.fromisoformat(str(text).strip())
+    except ValueError:
+        raise Unreadable("Write the time as 2026-05-04T09:55:00+02:00.") from None
+    if value.tzinfo is None:
+        raise Unreadable("The time needs its offset, such as +02:00.")
+    return value
+
+
+def key(text: object) -> uuid.UUID:
+    try:
+        return uuid.UUID(str(text))
+    except ValueError:
+        raise Unreadable(
+            "The entry's key must be a UUID made by the device that wrote it."
+        ) from None
+
+
+def line(text: object, *, longest: int) -> str:
+    """One or more lines of text, trimmed; control characters but line ends are refused."""
+    if not isinstance(text, str):
+        raise Unreadable("Write text here.")
+    said = text.strip()
+    if len(said) > longest:
+        raise Unreadable(f"Write at most {longest} characters; there are {len(said)}.")
+    if any(ord(c) < 32 and c not in "\n\r\t" for c in said):
+        raise Unreadable("There are characters here that cannot be printed.")
+    return said
