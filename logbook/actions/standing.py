@@ -19,12 +19,13 @@ from decimal import Decimal
 from typing import Any
 
 from logbook import clock
+from logbook.cases import rows as rows_of_case
 from logbook.models import (
     Assessment,
     AssessmentAsked,
+    Component,
     Crack,
     Disposition,
-    Finding,
     Inspection,
     Location,
     Repair,
@@ -71,8 +72,8 @@ def refresh(location: Location, crack: Crack | None) -> Standing | None:
         "limit": what.limit,
         "assessment": what.assessment,
         "disposition": what.disposition,
-        "last_finding": _last_finding(location, crack),
-        "counter": last_counter(location),
+        "last_finding": rows_of_case.last_look(location, crack),
+        "counter": last_counter(location.component),
     }
     standing = rows.first()
     if standing is None:
@@ -88,10 +89,10 @@ def refresh(location: Location, crack: Crack | None) -> Standing | None:
     return standing
 
 
-def refresh_component_counter(location: Location) -> None:
+def refresh_counter(component: Component) -> None:
     """A new counter reading counts for every place of the component."""
-    counter = last_counter(location)
-    Standing.objects.filter(location__component=location.component).update(counter=counter)
+    counter = last_counter(component)
+    Standing.objects.filter(location__component=component).update(counter=counter)
 
 
 def rebuild() -> int:
@@ -125,20 +126,12 @@ def latest_disposition(location: Location, crack: Crack | None) -> Disposition |
     )
 
 
-def last_counter(location: Location) -> Decimal | None:
+def last_counter(component: Component) -> Decimal | None:
     """The newest reading on the component's counter; a struck-out look still read the counter."""
     found = (
-        Inspection.objects.filter(component=location.component)
-        .order_by("-found_on", "-leaf__index")
-        .first()
+        Inspection.objects.filter(component=component).order_by("-found_on", "-leaf__index").first()
     )
     return None if found is None else found.counter
-
-
-def _last_finding(location: Location, crack: Crack | None) -> Finding | None:
-    rows = Finding.objects.filter(location=location, strike_out__isnull=True)
-    rows = rows.filter(crack=crack) if crack is not None else rows.filter(crack__isnull=True)
-    return rows.order_by("-inspection__found_on", "-leaf__index").first()
 
 
 def _open_repair(location: Location, crack: Crack | None) -> Repair | None:

@@ -1,0 +1,22 @@
+"""Noting that an assessment is owed. The first half of what the worker answers."""
+
+import uuid
+
+from logbook import clock
+from logbook.actions import standing
+from logbook.models import AssessmentAsked, Crack, Location
+
+
+def for_assessment(location: Location, crack: Crack | None, because: uuid.UUID) -> None:
+    """Inside the asking act's transaction. What is owed already is not asked twice."""
+    AssessmentAsked.objects.get_or_create(
+        location=location, crack=crack, because_act=because, defaults={"asked_at": clock.now()}
+    )
+    standing.refresh(location, crack)
+
+
+def for_place_and_its_cracks(location: Location, because: uuid.UUID) -> None:
+    """The place itself and every open crack there: after its basis changed, say."""
+    for_assessment(location, None, because)
+    for crack in location.cracks.filter(closed_at__isnull=True):
+        for_assessment(location, crack, because)

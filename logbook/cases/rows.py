@@ -1,0 +1,93 @@
+"""Which rows a case is made from: the adopted basis and the sizes that count."""
+
+import datetime
+from decimal import Decimal
+
+from logbook.models import (
+    Basis,
+    Component,
+    Crack,
+    Finding,
+    Inspection,
+    Location,
+    Measurement,
+    Repair,
+)
+
+
+def adopted_basis(location: Location) -> Basis | None:
+    """The newest basis that someone other than its author has adopted."""
+    return (
+        Basis.objects.filter(location=location, adoption__isnull=False)
+        .select_related("leaf", "adoption__leaf")
+        .order_by("-revision")
+        .first()
+    )
+
+
+def measurements(crack: Crack) -> list[Measurement]:
+    """The sizes that count, oldest first: not struck out, and since the newest start.
+
+    Of several sizes of one day the larger counts until a person has decided: it stands last.
+    """
+    rows = (
+        Measurement.objects.filter(crack=crack, finding__strike_out__isnull=True)
+        .select_related("finding__inspection", "leaf")
+        .order_by("finding__inspection__found_on", "leaf__index")
+    )
+    start = new_start(crack)
+    if start is not None:
+        rows = rows.filter(leaf__index__gt=start.leaf.index)
+    by_size = sorted(
+        rows,
+        key=lambda m: (
+            m.finding.inspection.found_on,
+            m.depth_mm or Decimal(0),
+            m.length_mm or Decimal(0),
+        ),
+    )
+    return by_size
+
+
+def new_start(crack: Crack) -> Repair | None:
+    """The newest repair after which the crack goes on with a new start."""
+    return (
+        Repair.objects.filter(crack=crack, closes=False)
+        .select_related("leaf")
+        .order_by("-leaf__index")
+        .first()
+    )
+
+
+def last_look(location: Location, crack: Crack | None) -> Finding | None:
+    """The newest finding that says something about this place or crack and was not struck out."""
+    rows = Finding.objects.filter(location=location, strike_out__isnull=True)
+    rows = rows.filter(crack=crack) if crack is not None else rows.filter(crack__isnull=True)
+    return (
+        rows.select_related("inspection", "leaf")
+        .order_by("-inspection__found_on", "-leaf__index")
+        .first()
+    )
+
+
+def readings(component: Component) -> list[tuple[datetime.date, Decimal]]:
+    """Counter readings, oldest first, since the counter was last replaced; never running back."""
+    kept: list[tuple[datetime.date, Decimal]] = []
+    rows = Inspection.objects.filter(component=component).order_by("found_on", "leaf__index")
+    for on, at, replaced in rows.values_list("found_on", "counter", "counter_replaced_why"):
+        if replaced:
+            kept = []
+        if not kept or at >= kept[-1][1]:
+            kept.append((on, at))
+    return kept
+
+
+def counter_since(component: Component) -> datetime.date | None:
+    """The day from which today's counter counts: when it was last replaced, if ever."""
+    return (
+        Inspection.objects.filter(component=component)
+        .exclude(counter_replaced_why="")
+        .order_by("-found_on")
+        .values_list("found_on", flat=True)
+        .first()
+    )
