@@ -3,7 +3,8 @@
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 
-from .layers import Chart, Point, View, plated, text_width
+from .drawing import Chart
+from .layers import Point, View, plated, text_width
 
 
 @dataclass(frozen=True)

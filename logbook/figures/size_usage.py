@@ -254,8 +254,8 @@ def _strip(story: SizeStory, view: View) -> list[Chart]:
     layers.append(segments(view, sides, ink.INK, 2))
     if story.limit_mm is not None and story.limit_mm < view.y[1]:
         layers.append(segments(view, [((0.0, story.limit_mm), (1.0, story.limit_mm))], ink.INK, 4))
-    head = {"align": "left", "dy": -34}
-    layers.append(words(view, (0.0, view.y[1]), f"{story.of}, mm", **head))
+    name = words(view, (0.0, view.y[1]), f"{story.of}, mm", align="left", dy=-34)
+    layers.append(name)
     if story.wall_mm is not None:
         layers.append(words(view, (0.5, 0.0), story.near_side, dy=15))
         if story.wall_mm <= view.y[1]:

@@ -33,3 +33,8 @@ def locale_format(decimal_sign: str) -> dict[str, object]:
         "grouping": [3],
         "currency": ["", ""],
     }
+
+
+def counts(unit: str) -> str:
+    """hour → "hours"; a word that ends in s stays as the site wrote it."""
+    return unit if unit.endswith("s") else f"{unit}s"

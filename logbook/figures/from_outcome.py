@@ -1,0 +1,176 @@
+"""From a case and its outcome, as contract documents, to the stories that the figures tell."""
+
+from collections.abc import Mapping, Sequence
+from datetime import date
+from typing import Any
+
+from .diagram import DiagramStory
+from .layers import Point
+from .section import SectionStory
+from .size_usage import Look, RuleMark, SizeStory
+
+Document = Mapping[str, Any]
+
+# Rules for the next look in their order, in words that need no standard at hand.
+RULE_WORDS = (
+    "life at its worst ÷ {factor}",
+    "forecast",
+    "what the method can find",
+    "longest interval",
+    "fixed date",
+)
+# How a kind lies in its wall.
+SHAPES = {
+    "plate-through-centre": "through",
+    "plate-through-edge": "edge",
+    "plate-surface": "surface",
+    "cylinder-axial-inside": "surface",
+    "bar-surface": "bar",
+}
+
+
+def size_story(
+    *,
+    what: str,
+    counter: str,
+    per_day: float | None,
+    looks: Sequence[Look],
+    of: str,
+    case: Document | None = None,
+    outcome: Document | None = None,
+    signed: bool = False,
+    next_on: date | None = None,
+    next_usage: float | None = None,
+    no_growth_why: str = "",
+    decimal_sign: str = ".",
+) -> SizeStory:
+    """of : "depth" or "length", the size that ``looks`` carry.
+
+    next_on, next_usage : what binds, where it differs from what the outcome proposes
+    """
+    case, outcome = case or {}, outcome or {}
+    start = _number(case.get("usage", {}).get("at"))
+    bounding = outcome.get("bounding") or {}
+    column = 1 if of == "depth" else 2
+    worst = _path(bounding.get("life"), column, start)
+    limit = _size(bounding.get("critical"), of)
+    if limit is None and worst:
+        limit = worst[-1][1]
+    governing = outcome.get("next_inspection") or {}
+    on, usage = governing.get("on"), _number(governing.get("usage"))
+    near, far = ("edge", "far edge") if _shape(case) == "edge" else ("this side", "far side")
+    return SizeStory(
+        what=what,
+        of=of,
+        counter=counter,
+        looks=tuple(looks),
+        per_day=per_day,
+        wall_mm=_wall(case, of),
+        near_side=near,
+        far_side=far,
+        worst=worst,
+        likely=_path(outcome.get("life"), column, start),
+        limit_mm=limit,
+        breaks_mm=_size(outcome.get("critical"), of),
+        next_usage=next_usage if next_usage is not None else usage,
+        next_on=next_on or (date.fromisoformat(on) if on else None),
+        signed=signed,
+        rules=rule_marks(case, outcome),
+        no_growth_why="" if worst else no_growth_why,
+        decimal_sign=decimal_sign,
+    )
+
+
+def rule_marks(case: Document, outcome: Document) -> tuple[RuleMark, ...]:
+    """The rules of an outcome, numbered in their order."""
+    governed_by = (outcome.get("next_inspection") or {}).get("governed_by")
+    factor = _number(case.get("criteria", {}).get("life_factor"))
+    marks = []
+    for n, rule in enumerate(outcome.get("rules", ()), start=1):
+        words = RULE_WORDS[n - 1] if n <= len(RULE_WORDS) else str(rule["rule"])
+        on = rule.get("on")
+        marks.append(
+            RuleMark(
+                rule=n,
+                name=words.format(factor="a factor" if factor is None else f"{factor:g}"),
+                usage=_number(rule.get("usage")),
+                on=date.fromisoformat(on) if on else None,
+                why_not=rule.get("why_not") or "",
+                governs=bool(governed_by) and rule["rule"] == governed_by,
+            )
+        )
+    return tuple(marks)
+
+
+def diagram_story(
+    *, what: str, case: Document, outcome: Document, decimal_sign: str = "."
+) -> DiagramStory | None:
+    """None where the outcome holds no limit curve or no point that decides."""
+    drawn = (outcome.get("figures") or {}).get("diagram") or {}
+    curve = drawn.get("limit_curve") or ()
+    failure = (outcome.get("bounding") or {}).get("failure") or {}
+    across, up = _number(failure.get("load_ratio")), _number(failure.get("toughness_ratio"))
+    if len(curve) < 2 or across is None or up is None:
+        return None
+    return DiagramStory(
+        what=what,
+        curve=tuple((float(x), float(y)) for x, y in curve),
+        now=(across, up),
+        reserve=_number(failure.get("reserve_on_load")),
+        asked=_number(case.get("criteria", {}).get("load_reserve")),
+        method=str(drawn.get("method", "")),
+        decimal_sign=decimal_sign,
+    )
+
+
+def section_story(
+    *, what: str, case: Document, outcome: Document, decimal_sign: str = "."
+) -> SectionStory | None:
+    """None where the kind has no drawing here or a size is not known."""
+    shape, body, crack = _shape(case), case.get("body", {}), case.get("crack", {})
+    depth, length = _number(crack.get("depth_mm")), _number(crack.get("length_mm"))
+    wall = _number(body.get("diameter_mm" if shape == "bar" else "thickness_mm"))
+    by_depth = shape in ("surface", "bar")
+    if shape is None or wall is None or (depth if by_depth else length) is None:
+        return None
+    if shape == "surface" and length is None:
+        return None
+    return SectionStory(
+        what=what,
+        shape=shape,
+        thickness_mm=wall,
+        length_mm=length,
+        depth_mm=depth,
+        width_mm=_number(body.get("width_mm")),
+        stop_mm=_size(outcome.get("stop_size"), "depth" if by_depth else "length"),
+        decimal_sign=decimal_sign,
+    )
+
+
+def _shape(case: Document) -> str | None:
+    return SHAPES.get(str(case.get("crack", {}).get("kind", "")))
+
+
+def _wall(case: Document, of: str) -> float | None:
+    """From this side to the far side, in the direction of the size that is drawn."""
+    body, shape = case.get("body", {}), _shape(case)
+    if of == "depth":
+        return _number(body.get("diameter_mm" if shape == "bar" else "thickness_mm"))
+    # A centre crack's length runs both ways, so no side of the plate is its far side.
+    return _number(body.get("width_mm")) if shape == "edge" else None
+
+
+def _path(life: Document | None, column: int, start: float | None) -> tuple[Point, ...]:
+    """(counter reading, mm). Paths are kept as usage from the last look on."""
+    rows = (life or {}).get("path") or ()
+    if start is None or any(row[column] is None for row in rows):
+        return ()
+    return tuple((start + float(row[0]), float(row[column])) for row in rows)
+
+
+def _size(sizes: Document | None, of: str) -> float | None:
+    return _number((sizes or {}).get(f"{of}_mm"))
+
+
+def _number(value: Any) -> float | None:
+    return None if value is None else float(value)

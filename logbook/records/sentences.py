@@ -1,0 +1,54 @@
+"""What a verdict says to the crew, in one sentence, and when what binds ends."""
+
+from datetime import date, datetime
+from decimal import Decimal
+from zoneinfo import ZoneInfo
+
+from logbook.figures.words import counts, day, number
+
+CAUTION = (
+    "This program proposes; a licensed person decides and signs. The owner’s codes, the local rules"
+    " and licensed practice come first."
+)
+OUT_OF_USE = frozenset({"refer", "withdraw"})
+
+
+def held(verdict: str, until_on: date | None, until_at: Decimal | None) -> bool:
+    """Out of use: withdraw and refer always, repair where it is not given until a date or count."""
+    return verdict in OUT_OF_USE or (verdict == "repair" and until_on is None and until_at is None)
+
+
+def until(
+    until_on: date | None, until_at: Decimal | None, unit: str, decimal_sign: str = "."
+) -> str:
+    """ "14 Sep 2027 or 14,950 hours"; empty where neither is given."""
+    parts = [] if until_on is None else [day(until_on)]
+    if until_at is not None:
+        parts.append(count(until_at, unit, decimal_sign))
+    return " or ".join(parts)
+
+
+def count(value: Decimal, unit: str, decimal_sign: str = ".") -> str:
+    """14,950 hours; decimals only where there are some."""
+    decimals = 0 if value == value.to_integral_value() else 1
+    return f"{number(float(value), decimals, decimal_sign)}\N{NO-BREAK SPACE}{counts(unit)}"
+
+
+def sentence(verdict: str, *, by: str, limit: str, on_call: str) -> str:
+    """by : from ``until``; limit : the restriction; on_call : name and number. Raises KeyError."""
+    again = f"Look again by {by}." if by else "No date for the next look is set."
+    return {
+        "continue": f"May stay in use. {f'Next look by {by}.' if by else again}",
+        "watch": f"May stay in use. {f'Look again early: by {by}.' if by else again}",
+        "restrict": f"May be used only so: {limit}. {again}",
+        "repair": f"Repair before {by}." if by else "Not back into use until repaired.",
+        "refer": "Not to be used until an engineer has decided.",
+        "withdraw": f"Take it out of use now. Hang the tag. Call {on_call}.",
+    }[verdict]
+
+
+def moment(at: datetime, time_zone: str) -> str:
+    """5 May 2026, 16:20 +02:00."""
+    there = at.astimezone(ZoneInfo(time_zone))
+    offset = there.strftime("%z")
+    return f"{day(there.date())}, {there:%H:%M} {offset[:3]}:{offset[3:]}"
