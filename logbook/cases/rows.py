@@ -38,7 +38,7 @@ def measurements(crack: Crack) -> list[Measurement]:
     start = new_start(crack)
     if start is not None:
         rows = rows.filter(leaf__index__gt=start.leaf.index)
-    by_size = sorted(
+    return sorted(
         rows,
         key=lambda m: (
             m.finding.inspection.found_on,
@@ -46,7 +46,6 @@ def measurements(crack: Crack) -> list[Measurement]:
             m.length_mm or Decimal(0),
         ),
     )
-    return by_size
 
 
 def new_start(crack: Crack) -> Repair | None:

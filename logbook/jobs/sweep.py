@@ -1,0 +1,75 @@
+"""Finding what died: owed assessments that nobody took up, tasks whose worker is gone.
+
+A task is only a hint that work waits; ``AssessmentAsked`` is the truth. Running a task twice is
+harmless, since the proposal is written once.
+"""
+
+import datetime
+import threading
+
+from django.db import connection
+from django_tasks_db.models import DBTaskResult
+
+from logbook import clock
+from logbook.models import AssessmentAsked, Beat
+
+BEAT_SECONDS = 5
+DEAD_SECONDS = 30
+OWED_SECONDS = 20
+
+
+def beat(worker_id: str) -> None:
+    Beat.objects.update_or_create(worker_id=worker_id, defaults={"at": clock.now()})
+
+
+def release_dead_tasks() -> int:
+    """Put tasks back whose worker no longer beats; returns how many."""
+    now = clock.now()
+    dead = now - datetime.timedelta(seconds=DEAD_SECONDS)
+    alive = set(Beat.objects.filter(at__gte=dead).values_list("worker_id", flat=True))
+    count = 0
+    for task in DBTaskResult.objects.running().filter(started_at__lt=dead):
+        if task.worker_ids and task.worker_ids[-1] in alive:
+            continue
+        # Compare and set: only if it is still the run that we looked at.
+        count += DBTaskResult.objects.filter(
+            pk=task.pk, status="RUNNING", started_at=task.started_at
+        ).update(status="READY")
+    return count
+
+
+def enqueue_owed(older_than_seconds: float = OWED_SECONDS) -> int:
+    """Ask again for every assessment that has been owed for a while; returns how many."""
+    from .tasks import propose_one
+
+    before = clock.now() - datetime.timedelta(seconds=older_than_seconds)
+    owed = (
+        AssessmentAsked.objects.filter(asked_at__lt=before)
+        .values_list("location_id", "crack_id")
+        .distinct()
+    )
+    for location, crack in owed:
+        propose_one.enqueue(location, crack)
+    return len(owed)
+
+
+class Heart(threading.Thread):
+    """Beats, releases and sweeps beside a worker until told to stop. An error that is not
+    swallowed here would stop the beat, and the worker would be taken for dead: so it does."""
+
+    def __init__(self, worker_id: str) -> None:
+        super().__init__(daemon=True)
+        self.worker_id = worker_id
+        self.stopped = threading.Event()
+
+    def run(self) -> None:
+        rounds = 0
+        try:
+            while not self.stopped.wait(BEAT_SECONDS if rounds else 0):
+                beat(self.worker_id)
+                release_dead_tasks()
+                if rounds % 4 == 0:
+                    enqueue_owed()
+                rounds += 1
+        finally:
+            connection.close()
