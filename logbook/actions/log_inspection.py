@@ -104,7 +104,7 @@ def _write(by: Person, component: Component, draft: InspectionDraft, digest: str
                 if name not in ("component", "findings")
             },
         )
-        numbers = []
+        numbers, findings = [], []
         for f in draft.findings:
             finding = _write_finding(inspection, act, f, by)
             numbers.append(
@@ -114,8 +114,7 @@ def _write(by: Person, component: Component, draft: InspectionDraft, digest: str
                     "crack": finding.crack.number if finding.crack else None,
                 }
             )
-            _ask(finding, act)
-        standing.refresh_counter(component)
+            findings.append(finding)
         append(
             KIND,
             {**content_of(draft), "inspection": inspection.pk, "written": numbers},
@@ -124,6 +123,9 @@ def _write(by: Person, component: Component, draft: InspectionDraft, digest: str
             site=component.site,
             names={"inspector": draft.inspector_name},
         )
+        for finding in findings:
+            ask.for_assessment(finding.location, finding.crack, act)
+        standing.refresh_counter(component)
     return inspection
 
 
@@ -182,9 +184,3 @@ def _crack(component: Component, location: Location, f: FindingDraft) -> Crack |
     if crack.closed_at is not None:
         raise Refusal("crack-closed", f"Crack {crack.number} was closed meanwhile.", status=409)
     return crack
-
-
-def _ask(finding: Finding, act: uuid.UUID) -> None:
-    """A crack asks for itself; "nothing found" and "could not look" ask for the place, and for
-    every open crack there that nobody reported on."""
-    ask.for_assessment(finding.location, finding.crack, act)

@@ -163,7 +163,6 @@ def _write(
         )
         because = list(dict.fromkeys(a.because_act for a in asked))
         AssessmentAsked.objects.filter(pk__in=[a.pk for a in asked]).delete()
-        standing.refresh(location, crack)
         append(
             KIND,
             content_of(made),
@@ -172,6 +171,7 @@ def _write(
             site=location.component.site,
             because_of=because,
         )
+        standing.refresh(location, crack)
     return made
 
 

@@ -52,7 +52,8 @@ class _What:
 
 
 def refresh(location: Location, crack: Crack | None) -> Standing | None:
-    """Work out and store what binds for one place (crack None) or crack. Inside a transaction.
+    """Work out and store what binds for one place (crack None) or crack. Inside a transaction,
+    after the leaf of the act: what is newer is told by the leaves.
 
     None where nothing stands any more: a closed crack that was returned to service, a place that
     nobody has looked at.

@@ -1,0 +1,39 @@
+"""Which steps need two people and stated grounds, and who may not be the second."""
+
+from logbook.errors import not_permitted
+from logbook.models import Assessment, Disposition, Finding, Person, Verdict, strictness
+
+LEAVING = frozenset({Verdict.REPAIR, Verdict.REFER, Verdict.WITHDRAW, Verdict.RESTRICT})
+
+
+def eases(verdict: str, standing_verdict: str) -> bool:
+    """Does this leave repair, refer or withdraw, or lift a restriction?"""
+    return standing_verdict in LEAVING and strictness(verdict) < strictness(standing_verdict)
+
+
+def loggers_of(assessment: Assessment) -> set[int]:
+    """Who wrote the looks that the verdict rests on."""
+    rows = Finding.objects.filter(location=assessment.location, strike_out__isnull=True)
+    if assessment.crack_id is not None:
+        rows = rows.filter(crack=assessment.crack)
+    newest = rows.order_by("-inspection__found_on", "-leaf__index").first()
+    return set() if newest is None else {newest.inspection.author_id}
+
+
+def must_not_have_logged(by: Person, assessment: Assessment) -> None:
+    if by.pk in loggers_of(assessment):
+        raise not_permitted(
+            "You wrote the look that this verdict rests on: someone else has to sign it."
+        )
+
+
+def standing_before(assessment: Assessment) -> str:
+    """The strictest verdict that this signature would leave behind: what is in force, or what the
+    proposal itself says."""
+    d = (
+        Disposition.objects.filter(location=assessment.location, crack=assessment.crack)
+        .order_by("-leaf__index")
+        .first()
+    )
+    verdicts = [assessment.verdict, *([d.verdict] if d is not None else [])]
+    return max(verdicts, key=strictness)
