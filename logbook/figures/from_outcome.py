@@ -18,7 +18,9 @@ RULE_WORDS = (
     "what the method can find",
     "longest interval",
     "fixed date",
+    "growth faster than explained",
 )
+
 # How a kind lies in its wall.
 SHAPES = {
     "plate-through-centre": "through",
@@ -53,9 +55,8 @@ def size_story(
     bounding = outcome.get("bounding") or {}
     column = 1 if of == "depth" else 2
     worst = _path(bounding.get("life"), column, start)
-    limit = _size(bounding.get("critical"), of)
-    if limit is None and worst:
-        limit = worst[-1][1]
+    stop = _size(outcome.get("stop_size"), of)
+    limit = worst[-1][1] if worst and _ends_by_failing(bounding["life"]) else stop
     governing = outcome.get("next_inspection") or {}
     on, usage = governing.get("on"), _number(governing.get("usage"))
     near, far = ("edge", "far edge") if _shape(case) == "edge" else ("this side", "far side")
@@ -72,6 +73,7 @@ def size_story(
         likely=_path(outcome.get("life"), column, start),
         limit_mm=limit,
         breaks_mm=_size(outcome.get("critical"), of),
+        stop_mm=stop,
         next_usage=next_usage if next_usage is not None else usage,
         next_on=next_on or (date.fromisoformat(on) if on else None),
         signed=signed,
@@ -166,6 +168,11 @@ def _path(life: Document | None, column: int, start: float | None) -> tuple[Poin
     if start is None or any(row[column] is None for row in rows):
         return ()
     return tuple((start + float(row[0]), float(row[column])) for row in rows)
+
+
+def _ends_by_failing(life: Document) -> bool:
+    """A path that ends for another reason ends at a size that still holds."""
+    return life.get("usage") is not None and life.get("ends_by") != "out of range"
 
 
 def _size(sizes: Document | None, of: str) -> float | None:

@@ -76,7 +76,8 @@ class SizeStory:
     wall_mm : from this side to the far side, None where not known
     worst, likely : (usage, mm) from the last look on; empty where nothing can be reckoned
     limit_mm : from here on it must be taken as able to break; breaks_mm : most likely breaks
-    sure_mm : the smallest crack that the method is sure to find
+    stop_mm : a size found at or beyond this stops the use; sure_mm : the smallest crack that the
+    method is sure to find
     next_look : (usage or None, date or None); signed : by a licensed hand
     no_growth_why : why no growth is drawn, a sentence
     """
@@ -93,6 +94,7 @@ class SizeStory:
     likely: tuple[Point, ...] = ()
     limit_mm: float | None = None
     breaks_mm: float | None = None
+    stop_mm: float | None = None
     sure_mm: float | None = None
     next_usage: float | None = None
     next_on: date | None = None
@@ -167,6 +169,8 @@ def table(story: SizeStory) -> Table:
         notes.append(f"Must be taken as able to break from {story.mm(story.limit_mm)}.")
     if story.breaks_mm is not None:
         notes.append(f"Would most likely break at {story.mm(story.breaks_mm)}.")
+    if story.stop_mm is not None:
+        notes.append(f"Stop when {story.mm(story.stop_mm)} or more is found.")
     if story.sure_mm is not None:
         notes.append(f"Smallest crack that the method is sure to find: {story.mm(story.sure_mm)}.")
     for label, points in (("At worst", story.worst), ("Most likely", story.likely)):

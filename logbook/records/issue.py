@@ -30,26 +30,27 @@ log = logging.getLogger("logbook.records")
 NUMBER_LOCK = 7_302_115
 
 
-def reserve_number(act: Disposition | Deferral) -> Record:
+def reserve_number(
+    *, disposition: Disposition | None = None, deferral: Deferral | None = None
+) -> Record:
     """The next number for what is being signed. Inside the signing transaction, before its leaf.
 
     Raises RuntimeError outside a transaction: a number taken and then lost would be a gap.
     """
     if not connection.in_atomic_block:
         raise RuntimeError("a record's number belongs inside the signing transaction")
+    signed = disposition if deferral is None else deferral.disposition
+    if signed is None:
+        raise TypeError("a record is kept of a disposition or of a deferral")
     if connection.vendor == "postgresql":
+        # SQLite's writers come one after the other; here those who number do.
         with connection.cursor() as cursor:
             cursor.execute("SELECT pg_advisory_xact_lock(%s)", [NUMBER_LOCK])
     last = Record.objects.aggregate(last=Max("number"))["last"] or 0
-    deferral = act if isinstance(act, Deferral) else None
-    disposition = act if isinstance(act, Disposition) else None
-    of = disposition if deferral is None else deferral.disposition
-    if of is None:
-        raise TypeError(f"no record is kept of a {type(act).__name__}")
     return Record.objects.create(
         number=last + 1,
-        site=of.location.component.site,
-        disposition=disposition,
+        site=signed.location.component.site,
+        disposition=disposition if deferral is None else None,
         deferral=deferral,
     )
 
