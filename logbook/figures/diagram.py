@@ -152,13 +152,13 @@ def _plot(story: DiagramStory, view: View) -> list[Chart]:
     up = "toughness ratio: at 1 the crack runs"
     return [
         segments(view, hatch, ink.PENCIL, 1),
-        *plan.plates,
+        *plan.plates(),
         words(view, (0.0, view.y[1]), up, align="left", dx=-24, dy=-18),
         path(view, closed, ink.INK, 4, strokeJoin="miter", clip=False),
         *_ray(story, view),
         *[dots(view, [point], "circle", 50, hollow=True) for point, _ in _past_in(story, view)],
         *_now(story, view),
-        *plan.words,
+        *plan.words(),
     ]
 
 
@@ -184,8 +184,9 @@ def _ray(story: DiagramStory, view: View) -> list[Chart]:
     layers = [path(view, [story.ray_start, end], ink.INK, 1.5, strokeDash=[7, 5])]
     if story.ray_start != (0.0, 0.0):
         layers.append(dots(view, [story.ray_start], "diamond", 80, hollow=True))
-    for factor in _ruler(story):
-        layers.append(segments(view, [_across_ray(story, view, factor, 5)], ink.INK, 1.5))
+    ruler = [_across_ray(story, view, factor, 5) for factor in _ruler(story)]
+    if ruler:
+        layers.append(segments(view, ruler, ink.INK, 1.5))
     if story.reserve is not None and _within(view, story.at(story.reserve)):
         layers.append(dots(view, [story.at(story.reserve)], "square", 140))
     if story.asked is not None and _within(view, story.at(story.asked)):
@@ -198,7 +199,7 @@ def _put_ray_words(story: DiagramStory, plan: Plan) -> None:
     if story.reserve is not None and _within(view, story.at(story.reserve)):
         text = [f"breaks at {story.n(story.reserve)} ×", "this load"]
         at = story.at(story.reserve)
-        plan.put(text, [*_around(at, 14), *_around(at, 28)], fontWeight="bold")
+        plan.put(text, [*_around(at, 14), *_around(at, 28)], bold=True)
     if story.asked is not None and _within(view, story.at(story.asked)):
         places = _beside_ray(story, view, story.asked, (20, 28, 36))
         plan.put(f"asked for: {story.n(story.asked)}", places)
@@ -271,12 +272,12 @@ def _now(story: DiagramStory, view: View) -> list[Chart]:
 
 def _put_now_words(story: DiagramStory, plan: Plan) -> None:
     if _within(plan.view, story.now):
-        plan.put("now, at its worst", _around(story.now, 16), fontWeight="bold")
+        plan.put("now, at its worst", _around(story.now, 16), bold=True)
         return
     said = f"load ratio {story.n(story.now[0])}, toughness ratio {story.n(story.now[1])}"
     corner = (plan.view.x[1] - 8 * plan.view.px_x, plan.view.y[1])
     places = [Place(corner, "right", 0, dy) for dy in (22, 62, 102)]
-    plan.put(["now, beyond this picture:", said], places, fontWeight="bold")
+    plan.put(["now, beyond this picture:", said], places, bold=True)
 
 
 def _ellipse(middle: Point, half: Point) -> list[Point]:
@@ -301,10 +302,11 @@ def _put_region_words(story: DiagramStory, plan: Plan) -> None:
         for across in (10, 90, 170)
         for dy in (16, 40)
     ]
+    run += [Place((far[0], view.y[1]), "right", 0, dy) for dy in (70, 94)]
     give = [Place(far, "right", 0, -dy) for dy in (24, 54, 84, 114)]
     plan.put("runs suddenly", run)
     plan.put(["gives way by", "stretching"], give)
-    plan.put("holds", inside, fontWeight="bold")
+    plan.put("holds", inside, bold=True)
 
 
 def _within(view: View, point: Point) -> bool:

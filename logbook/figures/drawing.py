@@ -85,7 +85,7 @@ def _finished(svg: str, name: str, title: str) -> str:
     body = svg[svg.index(">") + 1 :]
     width, height = size.groups()
     return (
-        f'<svg xmlns="http://www.w3.org/2000/svg" class="figure" role="img"'
+        f'<svg xmlns="http://www.w3.org/2000/svg" class="chart" role="img"'
         f' aria-label="{escape(title, quote=True)}"'
         f' width="{width}" height="{height}" viewBox="0 0 {width} {height}">{body}'
     )

@@ -17,6 +17,7 @@ from .drawing import FONT_FOLDERS, Chart
 
 Point = tuple[float, float]
 FONT_SIZE = 14
+LINE = 18
 
 
 @dataclass(frozen=True)
@@ -89,14 +90,14 @@ def band(view: View, edges: Sequence[tuple[float, float, float]], colour: str) -
     }
 
 
-def box(view: View, low: Point, high: Point, fill: str | None, stroke: str | None = None) -> Chart:
-    mark: Chart = {"type": "rect", "opacity": 1, "filled": fill is not None}
-    mark |= {"fill": fill} if fill else {"fill": None}
-    mark |= {"stroke": stroke, "strokeWidth": 2} if stroke else {"stroke": None}
+def boxes(view: View, corners: Sequence[tuple[Point, Point]], fill: str) -> Chart:
+    """Filled rectangles, each from its low to its high corner."""
+    values = [{"x": x, "y": y, "x2": x2, "y2": y2} for (x, y), (x2, y2) in corners]
+    to = {"x2": {"field": "x2"}, "y2": {"field": "y2"}}
     return {
-        "data": {"values": [{"x": low[0], "y": low[1], "x2": high[0], "y2": high[1]}]},
-        "mark": mark,
-        "encoding": view.encoding(x2={"field": "x2"}, y2={"field": "y2"}),
+        "data": {"values": values},
+        "mark": {"type": "rect", "opacity": 1, "fill": fill, "stroke": None},
+        "encoding": view.encoding(**to),
     }
 
 
@@ -119,37 +120,19 @@ def dots(
     }
 
 
-def words(
-    view: View, at: Point, text: str | Sequence[str], colour: str = ink.INK, **mark: Any
-) -> Chart:
-    """Text at a place; mark takes Vega-Lite's align, baseline, dx, dy, fontWeight, angle."""
-    lines = [text] if isinstance(text, str) else list(text)
+def words(view: View, at: Point, text: str, **mark: Any) -> Chart:
+    """Text at a place; mark takes Vega-Lite's align, dx, dy, fontWeight."""
+    return many_words(view, [(at, (text,))], **mark)
+
+
+def many_words(view: View, put: Sequence[tuple[Point, tuple[str, ...]]], **mark: Any) -> Chart:
+    """Texts of one kind, each with its place; of several lines, the place is the first one's."""
+    values = [{"x": x, "y": y, "text": list(lines)} for (x, y), lines in put]
     return {
-        "data": {"values": [{"x": at[0], "y": at[1], "text": lines}]},
-        "mark": {"type": "text", "color": colour, "baseline": "middle", "lineHeight": 18, **mark},
+        "data": {"values": values},
+        "mark": {"type": "text", "baseline": "middle", "lineHeight": LINE, **mark},
         "encoding": view.encoding(text={"field": "text", "type": "nominal"}),
     }
-
-
-def plated(view: View, at: Point, text: str | Sequence[str], **mark: Any) -> tuple[Chart, Chart]:
-    """A plate of the sheet's colour, and words to stand on it: legible on hatch.
-
-    ``align`` is left, center or right; ``dx``, ``dy`` are in px as for ``words``.
-    """
-    lines = [text] if isinstance(text, str) else list(text)
-    bold = mark.get("fontWeight") == "bold"
-    wide = max(text_width(line, bold) for line in lines) + 8
-    tall = 18 * len(lines) + 2
-    dx, dy = mark.get("dx", 0), mark.get("dy", 0)
-    left = {"left": dx - 4, "center": dx - wide / 2, "right": dx - wide + 4}[
-        mark.get("align", "center")
-    ]
-    x = at[0] + left * view.px_x
-    middle = at[1] - dy * view.px_y
-    low = (x, middle - tall / 2 * view.px_y)
-    high = (x + wide * view.px_x, middle + tall / 2 * view.px_y)
-    lifted = {**mark, "dy": dy - 9 * (len(lines) - 1)}
-    return box(view, low, high, ink.SHEET), words(view, at, lines, **lifted)
 
 
 def text_width(text: str, bold: bool = False) -> float:

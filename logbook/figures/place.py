@@ -3,8 +3,9 @@
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 
+from . import ink
 from .drawing import Chart
-from .layers import Point, View, plated, text_width
+from .layers import LINE, Point, View, boxes, many_words, text_width
 
 
 @dataclass(frozen=True)
@@ -39,9 +40,7 @@ class Plan:
     def __init__(self, view: View) -> None:
         self.view = view
         self.taken: list[Rect] = []
-        # Plates lie over hatch and under every stroke; words lie over all.
-        self.plates: list[Chart] = []
-        self.words: list[Chart] = []
+        self._put: list[tuple[Rect, Place, tuple[str, ...], str]] = []
 
     def px(self, at: Point) -> Point:
         return (
@@ -62,18 +61,43 @@ class Plan:
                 x, y = x1 + (x2 - x1) * n / parts, y1 + (y2 - y1) * n / parts
                 self.taken.append(Rect(x - reach, y - reach, x + reach, y + reach))
 
-    def put(self, text: str | Sequence[str], places: Sequence[Place], **mark: str) -> None:
+    def put(
+        self, text: str | Sequence[str], places: Sequence[Place], *, bold: bool = False
+    ) -> None:
         """The words on a plate, at the best of the places; that ground is then taken."""
-        lines = [text] if isinstance(text, str) else list(text)
-        wide = max(text_width(line, mark.get("fontWeight") == "bold") for line in lines) + 8
-        tall = 18.0 * len(lines) + 2
+        lines = (text,) if isinstance(text, str) else tuple(text)
+        wide = max(text_width(line, bold) for line in lines) + 8
+        tall = float(LINE * len(lines) + 2)
         best = min(places, key=lambda place: self._cost(self._rect(place, wide, tall)))
-        self.taken.append(self._rect(best, wide, tall))
-        plate, text_on_it = plated(
-            self.view, best.at, lines, align=best.align, dx=best.dx, dy=best.dy, **mark
-        )
-        self.plates.append(plate)
-        self.words.append(text_on_it)
+        rect = self._rect(best, wide, tall)
+        self.taken.append(rect)
+        self._put.append((rect, best, lines, "bold" if bold else "normal"))
+
+    def plates(self) -> list[Chart]:
+        """In the sheet's colour: they lie over hatch and under every stroke."""
+        corners = [
+            (self._data(rect.left, rect.bottom), self._data(rect.right, rect.top))
+            for rect, *_ in self._put
+        ]
+        return [boxes(self.view, corners, ink.SHEET)] if corners else []
+
+    def words(self) -> list[Chart]:
+        """They lie over all; one layer for all words of a kind, since each layer takes time."""
+        kinds: dict[tuple[str, str], list[tuple[Point, tuple[str, ...]]]] = {}
+        for rect, place, lines, weight in self._put:
+            x = {"left": rect.left + 4, "right": rect.right - 4}.get(
+                place.align, (rect.left + rect.right) / 2
+            )
+            # Several lines hang from the first one's middle.
+            at = self._data(x, rect.top - 1 - LINE / 2)
+            kinds.setdefault((place.align, weight), []).append((at, lines))
+        return [
+            many_words(self.view, put, align=align, fontWeight=weight)
+            for (align, weight), put in kinds.items()
+        ]
+
+    def _data(self, x: float, y: float) -> Point:
+        return (self.view.x[0] + x * self.view.px_x, self.view.y[0] + y * self.view.px_y)
 
     def _rect(self, place: Place, wide: float, tall: float) -> Rect:
         x, y = self.px(place.at)

@@ -11,7 +11,7 @@ from datetime import date, timedelta
 from . import ink
 from .drawing import Chart, Figure, Table, draw
 from .hatch import slant_hatch
-from .layers import Point, View, band, box, dots, path, segments, text_width, words
+from .layers import Point, View, band, boxes, dots, many_words, path, segments, text_width, words
 from .place import Place, Plan
 from .words import MONTHS, day, millimetres, number
 
@@ -247,7 +247,7 @@ def _chart(story: SizeStory) -> Chart:
 def _strip(story: SizeStory, view: View) -> list[Chart]:
     """The wall, cut across the crack: its depth is to the scale of the plot beside it."""
     top = view.y[1] if story.wall_mm is None else min(story.wall_mm, view.y[1])
-    layers = [box(view, (0.0, 0.0), (1.0, top), ink.SHEET, None)]
+    layers = [boxes(view, [((0.0, 0.0), (1.0, top))], ink.SHEET)]
     sides: list[tuple[Point, Point]] = [
         ((0.0, 0.0), (0.0, top)),
         ((1.0, 0.0), (1.0, top)),
@@ -295,7 +295,7 @@ def _plot(story: SizeStory, view: View) -> list[Chart]:
     _put_level_words(story, plan)
     _put_growth_words(story, plan)
     _put_rule_words(story, plan)
-    return [*_hatch(story, view), *plan.plates, *strokes, *plan.words]
+    return [*_hatch(story, view), *plan.plates(), *strokes, *plan.words()]
 
 
 def _take_what_is_drawn(story: SizeStory, plan: Plan) -> None:
@@ -395,15 +395,17 @@ def _usage_on(known: Sequence[tuple[float, date]], on: date) -> float:
 
 def _dates(story: SizeStory, view: View) -> list[Chart]:
     top, tick = view.y[1], 6 * view.px_y
-    layers = [segments(view, [((view.x[0], top), (view.x[1], top))], ink.RULE, 1)]
+    ticks = [((view.x[0], top), (view.x[1], top))]
+    put: list[tuple[Point, tuple[str, ...]]] = []
     free = view.x[0] - view.px_x * 34
     for usage, text in _date_ticks(story, view):
-        layers.append(segments(view, [((usage, top), (usage, top + tick))], ink.RULE, 1))
+        ticks.append(((usage, top), (usage, top + tick)))
         half = (text_width(text) / 2 + 6) * view.px_x
         if usage - half > free and usage + half < view.x[1] + 30 * view.px_x:
-            layers.append(words(view, (usage, top), text, dy=-15))
+            put.append(((usage, top), (text,)))
             free = usage + half
-    return layers
+    named = [many_words(view, put, dy=-15)] if put else []
+    return [segments(view, ticks, ink.RULE, 1), *named]
 
 
 def _hatch(story: SizeStory, view: View) -> list[Chart]:
@@ -437,15 +439,16 @@ def _rules_in(story: SizeStory, view: View) -> list[tuple[float, RuleMark]]:
 
 def _rule_ticks(story: SizeStory, view: View) -> list[Chart]:
     """Ticks stand up from the axis; their numbers are explained below the picture."""
-    return [
-        segments(
-            view,
-            [((at, view.y[0]), (at, view.y[0] + _tick(rule) * view.px_y))],
-            ink.INK,
-            4 if rule.governs else 2,
-        )
-        for at, rule in _rules_in(story, view)
-    ]
+    layers = []
+    for governs in (False, True):
+        ticks = [
+            ((at, view.y[0]), (at, view.y[0] + _tick(rule) * view.px_y))
+            for at, rule in _rules_in(story, view)
+            if rule.governs is governs
+        ]
+        if ticks:
+            layers.append(segments(view, ticks, ink.INK, 4 if governs else 2))
+    return layers
 
 
 def _put_rule_words(story: SizeStory, plan: Plan) -> None:
@@ -467,7 +470,7 @@ def _put_rule_words(story: SizeStory, plan: Plan) -> None:
             Place((last, view.y[0]), "left", 8, -12),
         ]
         if group[0][1].governs:
-            plan.put(f"rule {text}", beside, fontWeight="bold")
+            plan.put(f"rule {text}", beside, bold=True)
         else:
             above = Place(((first + last) / 2, view.y[0]), "center", 0, -24)
             plan.put(text, [above, *beside])
@@ -479,21 +482,30 @@ def _outline_of(story: SizeStory) -> dict[str, str]:
 
 
 def _looks(story: SizeStory, view: View) -> list[Chart]:
+    """Bars first, then the outlines, then the lines through what was struck."""
     outline = _outline_of(story)
-    layers: list[Chart] = []
-    for look in story.looks:
-        if look.size_mm is None:
-            continue
-        at = (look.usage, look.size_mm)
-        if look.low_mm is not None and look.high_mm is not None:
-            ends = [(look.usage, max(look.low_mm, 0.0)), (look.usage, look.high_mm)]
-            colour = ink.PENCIL if look.struck else ink.INK
-            layers.append(segments(view, [(ends[0], ends[1])], colour, 2))
-        layers.append(dots(view, [at], outline[look.method], DOT, hollow=look.struck))
-        if look.struck:
-            aside, rise = 9 * view.px_x, 5 * view.px_y
-            through = ((at[0] - aside, at[1] - rise), (at[0] + aside, at[1] + rise))
-            layers.append(segments(view, [through], ink.INK, 2))
+    drawn = [(look, (look.usage, look.size_mm)) for look in story.looks if look.size_mm is not None]
+    layers = []
+    for struck in (True, False):
+        bars = [
+            ((look.usage, max(look.low_mm, 0.0)), (look.usage, look.high_mm))
+            for look, _ in drawn
+            if look.struck is struck and look.low_mm is not None and look.high_mm is not None
+        ]
+        if bars:
+            layers.append(segments(view, bars, ink.PENCIL if struck else ink.INK, 2))
+    kinds = dict.fromkeys((outline[look.method], look.struck) for look, _ in drawn)
+    for shape, struck in kinds:
+        places = [
+            at for look, at in drawn if (outline[look.method], look.struck) == (shape, struck)
+        ]
+        layers.append(dots(view, places, shape, DOT, hollow=struck))
+    aside, rise = 9 * view.px_x, 5 * view.px_y
+    through = [
+        ((x - aside, y - rise), (x + aside, y + rise)) for look, (x, y) in drawn if look.struck
+    ]
+    if through:
+        layers.append(segments(view, through, ink.INK, 2))
     return layers
 
 
@@ -527,15 +539,15 @@ def _put_level_words(story: SizeStory, plan: Plan) -> None:
     if story.limit_mm is not None and story.limit_mm >= view.y[1]:
         said = ("must be taken as able to break", f"from {story.mm(story.limit_mm)}, higher up")
         top = Place((view.x[0] + 8 * view.px_x, view.y[1]), "left", 0, 22)
-        plan.put(said, [top], fontWeight="bold")
+        plan.put(said, [top], bold=True)
     levels = [
-        (story.limit_mm, "must be taken as able to break from {}", "bold"),
-        (story.breaks_mm, "would most likely break at {}", "normal"),
-        (story.sure_mm, "smallest crack this method is sure to find", "normal"),
+        (story.limit_mm, "must be taken as able to break from {}", True),
+        (story.breaks_mm, "would most likely break at {}", False),
+        (story.sure_mm, "smallest crack this method is sure to find", False),
     ]
-    for mm, text, weight in levels:
+    for mm, text, bold in levels:
         if mm is not None and mm < view.y[1]:
-            plan.put(text.format(story.mm(mm)), _level_places(view, mm), fontWeight=weight)
+            plan.put(text.format(story.mm(mm)), _level_places(view, mm), bold=bold)
 
 
 def _put_growth_words(story: SizeStory, plan: Plan) -> None:
@@ -588,6 +600,7 @@ def _legend(story: SizeStory) -> Chart:
     total = STRIP + WIDTH + 40
     view = View((0.0, total), (0.0, 20.0 * len(lines)), total, 20.0 * len(lines))
     layers: list[Chart] = []
+    put: list[tuple[Point, tuple[str, ...]]] = []
     for n, line in enumerate(lines):
         y = 20.0 * (len(lines) - n) - 10
         x = 8.0
@@ -595,8 +608,9 @@ def _legend(story: SizeStory) -> Chart:
             if outline:
                 layers += _sample(view, x, y, outline)
                 x += 16
-            layers.append(words(view, (x, y), text, align="left"))
+            put.append(((x, y), (text,)))
             x += text_width(text) + 24
+    layers.append(many_words(view, put, align="left"))
     return {"width": total, "height": view.height, "layer": layers}
 
 
