@@ -79,6 +79,8 @@ def _finished(svg: str, name: str, title: str) -> str:
     clips = {old: f"{name}-{n}" for n, old in enumerate(re.findall(r'<clipPath id="(\w+)"', svg))}
     svg = re.sub(r'(<clipPath id=")(\w+)', lambda found: found[1] + clips[found[2]], svg)
     svg = re.sub(r'(<[^<>]* clip-path="url\(#)(\w+)', lambda found: found[1] + clips[found[2]], svg)
+    # Unsaid weight is the page's own, so that the sun look can make all text bold.
+    svg = re.sub(r'(<[^<>]*) font-weight="normal"', r"\1", svg)
     size = re.search(r'width="([\d.]+)" height="([\d.]+)" viewBox="[^"]*"', svg)
     if size is None:
         raise ValueError("the chart came back without a size")

@@ -72,6 +72,12 @@ def test_there_is_no_script_style_or_address_in_it(which):
     assert not re.search(r"<script|<style|style=|<image|href=|http(?!://www.w3.org)", svg)
 
 
+def test_weight_is_said_only_where_it_is_bold():
+    """The page's own weight holds else: bold in the sun."""
+    svg = size_figure(STORY).page_svg
+    assert set(re.findall(r'font-weight="(\w+)"', svg)) == {"bold"}
+
+
 def test_two_figures_of_a_page_share_no_id():
     both = size_figure(STORY, name="a").page_svg + size_figure(STORY, name="b").page_svg
     ids = re.findall(r' id="([^"]+)"', both)

@@ -5,21 +5,25 @@ import stat
 from datetime import date, timedelta
 from decimal import Decimal
 from io import BytesIO
+from pathlib import Path
 
 import pikepdf
 import pytest
+from django.conf import settings
 from django.db import transaction
 
 from logbook import clock
 from logbook.errors import Refusal
 from logbook.figures.of_assessment import figures_of
-from logbook.models import Head, Record
+from logbook.models import Deferral, DeferralRequest, Head, Photo, Record
 from logbook.records import issue as issuing
 from logbook.records.gather import gather
 from logbook.records.issue import issue, outstanding, path_of, reserve_number, stored_bytes
+from logbook.records.render import render_record
 from tests.figures.documents import CASE
 from tests.records.book import SIGNED, Book, usual
-from tests.records.test_render import text_of
+from tests.records.contents import jpeg
+from tests.records.test_render import drawn_on, text_of
 
 pytestmark = pytest.mark.django_db(transaction=True)
 
@@ -190,3 +194,64 @@ def test_figures_of_the_crack_for_the_pages():
     assert any("struck out: read from the wrong edge" in row[-1] for row in rows)
     assert rows[-1][3].replace("\N{NO-BREAK SPACE}", " ") == "7.2 mm to 9.6 mm"
     assert figures_of(book.crack, None)[0].name == "size"
+
+
+def test_the_marked_picture_and_the_photos_are_printed():
+    book = Book()
+    finding = book.look(date(2026, 5, 4), Decimal(12600), Decimal("8.4"), Decimal("24"))
+    for n, shade in enumerate([(200, 190, 180), (90, 100, 110)]):
+        save_photo(book, finding if n else None, jpeg(shade=shade))
+    late = Photo.objects.create(
+        site=book.site, finding=finding, sha256="f" * 64, uploaded_by=book.crew
+    )
+    book.component.picture = Photo.objects.order_by("pk").first()
+    book.component.save()
+    book.location.picture_x, book.location.picture_y = 0.25, 0.5
+    book.location.save()
+    content = gather(book.signed(book.proposal()).record)
+    assert content.part.picture.mark == (0.25, 0.5)
+    assert [photo.jpeg is None for photo in content.photos] == [False, True]
+    with pikepdf.open(BytesIO(render_record(content))) as read:
+        assert "/Image" in drawn_on(read.pages[0])
+        assert "/Image" in drawn_on(read.pages[1])
+    assert late.sha256[:32] in text_of(render_record(content), 2, 2)
+
+
+def save_photo(book, finding, body):
+    digest = hashlib.sha256(body).hexdigest()
+    folder = Path(settings.DATA_DIR) / "shown" / digest[:2]
+    folder.mkdir(parents=True, exist_ok=True)
+    (folder / f"{digest}.jpg").write_bytes(body)
+    return Photo.objects.create(
+        site=book.site, finding=finding, sha256=digest, uploaded_by=book.crew, arrived_at=SIGNED,
+        media_type="image/jpeg", byte_size=len(body), width=640, height=420,
+    )  # fmt: skip
+
+
+def test_a_deferral_has_a_record_of_its_own():
+    book, disposition = usual()
+    request = book.act(
+        "ask-deferral",
+        lambda act: DeferralRequest.objects.create(
+            leaf_id=act, disposition=disposition, by=book.engineer, grounds="lock is drained",
+            new_on=date(2027, 1, 8), at=SIGNED,
+        ),
+        by=book.engineer,
+    )  # fmt: skip
+
+    def make(act):
+        made = Deferral.objects.create(
+            leaf_id=act, request=request, disposition=disposition, by=book.signatory,
+            licence=book.licence, new_on=date(2027, 1, 8), at=SIGNED,
+        )  # fmt: skip
+        reserve_number(deferral=made)
+        return made
+
+    deferral = book.act("approve-deferral", make, by=book.signatory)
+    record = issue(deferral.record)
+    assert (record.number, record.state) == (2, "issued"), record.void_why
+    said = text_of(stored_bytes(record), 1, 1).replace("\N{NO-BREAK SPACE}", " ")
+    assert "Record of a deferral" in said
+    assert "put off from 14 Dec 2026 or 14,400 lifts to 8 Jan 2027" in said
+    whole = text_of(stored_bytes(record), 1, 99)
+    assert "lock is drained" in whole and "J. Brandt" in whole
