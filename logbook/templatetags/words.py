@@ -1,0 +1,70 @@
+"""How numbers, dates and the two voices are written on a page. ``{% load words %}``"""
+
+import datetime
+from decimal import Decimal
+from typing import Any
+from zoneinfo import ZoneInfo
+
+from django import template
+from django.utils.formats import date_format
+from django.utils.html import format_html
+from django.utils.safestring import SafeString
+from django.utils.translation import gettext as _
+
+from logbook.pages import writing
+
+register = template.Library()
+
+
+@register.filter
+def day(on: datetime.date | None) -> str:
+    """14 Sep 2027, with spaces that do not break."""
+    return writing.day(on) if on else ""
+
+
+@register.filter
+def moment(at: datetime.datetime | None, time_zone: str = "UTC") -> str:
+    """4 May 2026, 09:55 +02:00, where the site is."""
+    return writing.moment(at, time_zone) if at else ""
+
+
+@register.filter
+def clock_time(at: datetime.datetime, time_zone: str = "UTC") -> str:
+    return date_format(at.astimezone(ZoneInfo(time_zone)), "H:i")
+
+
+@register.simple_tag(takes_context=True)
+def num(context: template.Context, value: Decimal | float | None) -> str:
+    """A number as this person reads it; empty for none."""
+    return "" if value is None else writing.number(value, context.get("decimal_sign", "."))
+
+
+@register.simple_tag(takes_context=True)
+def mm(context: template.Context, value: Decimal | float | None) -> SafeString:
+    """8.4 mm, the unit in Regular."""
+    if value is None:
+        return format_html("{}", _("not measured"))
+    said = writing.number(value, context.get("decimal_sign", "."))
+    return format_html('<span class="whole">{}&nbsp;<span class="unit">mm</span></span>', said)
+
+
+@register.simple_tag
+def entered(value: Any, classes: str = "") -> SafeString:
+    """In the person's voice, and said so to those who only hear the page."""
+    return format_html(
+        '<span class="entered {}"><span class="hidden">{} </span>{}</span>',
+        classes,
+        _("entered:"),
+        value,
+    )
+
+
+@register.simple_tag
+def computed(value: Any, classes: str = "") -> SafeString:
+    """In the program's voice."""
+    return format_html(
+        '<span class="computed {}"><span class="hidden">{} </span>{}</span>',
+        classes,
+        _("computed:"),
+        value,
+    )
