@@ -40,11 +40,18 @@ def sentence(verdict: str, *, by: str, limit: str, on_call: str) -> str:
     return {
         "continue": f"May stay in use. {f'Next look by {by}.' if by else again}",
         "watch": f"May stay in use. {f'Look again early: by {by}.' if by else again}",
-        "restrict": f"May be used only so: {limit}. {again}",
+        "restrict": f"{_restricted(limit)} {again}",
         "repair": f"Repair before {by}." if by else "Not back into use until repaired.",
-        "refer": "Not to be used until an engineer has decided.",
+        "refer": f"Not to be used until an engineer has decided. Asked: {on_call}.",
         "withdraw": f"Take it out of use now. Hang the tag. Call {on_call}.",
     }[verdict]
+
+
+def _restricted(limit: str) -> str:
+    """A few words ("12 t", "up to 12 t") stand in the sentence; a whole sentence stands by itself."""
+    if not limit or limit.endswith("."):
+        return "May be used only within the limit given here."
+    return f"May be used only up to {limit.removeprefix('up to ')}."
 
 
 def moment(at: datetime, time_zone: str) -> str:

@@ -181,7 +181,7 @@ def test_a_place_without_a_crack_has_a_record_too():
 def test_a_restriction_says_whether_it_is_confirmed():
     book, _ = usual()
     content = gather(book.signed(book.proposal("restrict"), limit="up to 12 t").record)
-    assert content.sentence.startswith("May be used only so: up to 12 t.")
+    assert content.sentence.startswith("May be used only up to 12 t.")
     assert any("In force once somebody has confirmed" in notice for notice in content.notices)
 
 

@@ -15,16 +15,25 @@ FORBIDDEN = ("disposition", "bounding", "basis", "criteria", "case", "outcome")
     [
         ("continue", "14 Sep 2027", "May stay in use. Next look by 14 Sep 2027."),
         ("watch", "14 Sep 2027", "May stay in use. Look again early: by 14 Sep 2027."),
-        ("restrict", "1 May 2027", "May be used only so: up to 12 t. Look again by 1 May 2027."),
+        ("restrict", "1 May 2027", "May be used only up to 12 t. Look again by 1 May 2027."),
         ("repair", "1 May 2027", "Repair before 1 May 2027."),
         ("repair", "", "Not back into use until repaired."),
-        ("refer", "", "Not to be used until an engineer has decided."),
+        (
+            "refer",
+            "",
+            "Not to be used until an engineer has decided. Asked: M. Ito, 0555 0100.",
+        ),
         ("withdraw", "", "Take it out of use now. Hang the tag. Call M. Ito, 0555 0100."),
     ],
 )
 def test_each_verdict_says_what_to_do(verdict, by, said):
     assert sentence(verdict, by=by, limit="up to 12 t", on_call="M. Ito, 0555 0100") == said
     assert not [word for word in FORBIDDEN if word in (said + CAUTION).lower()]
+
+
+def test_a_limit_in_whole_sentences_stands_by_itself():
+    said = sentence("restrict", by="1 May", limit="Peak load limited to 83 %.", on_call="")
+    assert said == "May be used only within the limit given here. Look again by 1 May."
 
 
 def test_a_verdict_without_a_date_says_that_none_is_set():
