@@ -48,7 +48,7 @@ def sentence(verdict: str, *, by: str, limit: str, on_call: str) -> str:
 
 
 def _restricted(limit: str) -> str:
-    """A few words ("12 t", "up to 12 t") stand in the sentence; a whole sentence stands by itself."""
+    """A few words ("12 t", "up to 12 t") join the sentence; a whole sentence stands by itself."""
     if not limit or limit.endswith("."):
         return "May be used only within the limit given here."
     return f"May be used only up to {limit.removeprefix('up to ')}."
