@@ -1,0 +1,19 @@
+"""The computation: from a case document to an outcome. Imports nothing of the web application.
+
+This door is all that the application may import:
+
+assess(document) -> outcome     one case as dict, text or bytes; CaseRefused where it cannot be
+read_case(document) -> Case     the same checks, nothing computed
+outcome_text(outcome) -> str    the outcome's one exact text
+CaseRefused                     ``where`` is the key, ``why`` the sentence
+ENGINE                          name and version that every outcome carries
+KINDS                           the crack kinds computed here, by their plain names
+"""
+
+from assessment.document import Case, CaseRefused, read_case
+from assessment.document.writing import outcome_text
+from assessment.engine import ENGINE
+from assessment.kinds import KINDS
+from assessment.procedure import assess
+
+__all__ = ["ENGINE", "KINDS", "Case", "CaseRefused", "assess", "outcome_text", "read_case"]

@@ -1,0 +1,59 @@
+"""The cautions that every outcome carries, and those that this case adds."""
+
+from collections.abc import Iterator, Sequence
+
+from assessment.document.case import Case
+from assessment.validity import Mark
+
+ALWAYS = (
+    (
+        "This is a proposal. The owner's codes, the local rules and licensed practice come first, "
+        "and a licensed person decides and signs."
+    ),
+    (
+        "Holds for metals below the creep range and for cracks that open straight (mode I); "
+        "an oblique crack is assessed by its projection across the stress."
+    ),
+    (
+        "No credit is taken for stable tearing, for retardation after overloads, or for "
+        "compressive residual stress."
+    ),
+    "Growth is by the cycles given alone: corrosion and stress corrosion are clocks of their own.",
+)
+
+
+def cautions(case: Case, marks: Sequence[Mark], became_through: bool) -> tuple[str, ...]:
+    """All cautions, the usual ones first."""
+    return tuple(dict.fromkeys((*ALWAYS, *_of_case(case, became_through), *_of_marks(marks))))
+
+
+def _of_case(case: Case, became_through: bool) -> Iterator[str]:
+    crack, loading = case.crack, case.loading
+    if not crack.found:
+        yield f"No crack was measured here: the size assessed is assumed ({crack.source})."
+    if crack.depth_basis == "assumed":
+        yield f"Depth assumed, not measured: {crack.depth_source}."
+    if crack.depth_basis == "at most":
+        yield "The depth is an upper bound, used as if it were the depth."
+    if crack.length is None and crack.kind.optional_sizes:
+        yield "The length was not given: the shape of the front is assumed."
+    if loading.residual_said is not None:
+        yield f"Residual stress, as stated: {loading.residual_said}."
+    if loading.residual_given:
+        yield "Residual stress is given but not computed yet: all results here leave it out."
+    if loading.cycles_said is not None:
+        yield f"Cycles, as stated: {loading.cycles_said}."
+    if loading.temperature is None:
+        yield "No metal temperature is given: the toughness is taken to hold at the lowest one."
+    if case.material.typical:
+        yield "Material values are typical ones from a handbook and are not for acceptance."
+    if became_through:
+        yield (
+            "At its bounding size the crack goes through the wall and is assessed as a through "
+            "crack; bending of the wall then counts as membrane stress at its outer-fibre value."
+        )
+
+
+def _of_marks(marks: Sequence[Mark]) -> Iterator[str]:
+    for mark in marks:
+        yield f"Outside its published range: {mark.sentence()}"

@@ -1,0 +1,111 @@
+"""The case document: read strictly, checked once, as frozen dataclasses in SI units.
+
+reading → text to plain values; fields → keys of one object; crack, material, loading, usage,
+criteria → one section each; case → the dataclasses; writing → the outcome's one exact text.
+"""
+
+from typing import Any
+
+import numpy as np
+
+from assessment.document.case import Case, Crack, Missing
+from assessment.document.crack import read_body, read_crack
+from assessment.document.criteria import (
+    check_uncertainty,
+    read_criteria,
+    read_detection,
+    read_owner,
+    read_shortfalls,
+)
+from assessment.document.fields import Fields
+from assessment.document.loading import read_loading
+from assessment.document.material import read_material
+from assessment.document.reading import read_json
+from assessment.document.refusal import CaseRefused
+from assessment.document.usage import read_as_of, read_history, read_previous, read_usage
+
+__all__ = ["Case", "CaseRefused", "read_case", "read_json"]
+
+_KEYS = (
+    "case",
+    "as_of",
+    "crack",
+    "body",
+    "material",
+    "loading",
+    "usage",
+    "criteria",
+    "owner",
+    "uncertainty",
+    "detection",
+    "history",
+    "previous",
+    "look",
+    "population",
+    "seed",
+)
+
+
+def read_case(document: str | bytes | dict[str, Any]) -> Case:
+    """The case, checked. Raises CaseRefused with the key and the reason in words.
+
+    What only the decision needs is listed in ``Case.missing``, in the order of the document.
+    """
+    fields = Fields("", read_json(document), _KEYS)
+    _check_version(fields)
+    missing: list[Missing] = []
+    value = fields.values.get
+    crack = read_crack(fields.raw("crack"), missing)
+    body = read_body(fields.raw("body"), crack.kind)
+    _check_possible(crack, body)
+    material = read_material(fields.raw("material"), missing)
+    loading = read_loading(fields.raw("loading"), crack.kind, missing)
+    usage = read_usage(value("usage"), missing)
+    criteria = read_criteria(value("criteria"), missing)
+    if criteria.fracture == "diagram" and material.yielding is None:
+        raise CaseRefused("material.yielding", "this is needed for the diagram and missing.")
+    check_uncertainty(value("uncertainty"))
+    detection = read_detection(value("detection"))
+    if not crack.found and detection is None:
+        missing.append(Missing("detection.a90_95_mm", "what the method finds is missing."))
+    as_of_on, as_of_at = read_as_of(value("as_of"), usage)
+    return Case(
+        as_of_on=as_of_on,
+        as_of_at=as_of_at,
+        crack=crack,
+        body=body,
+        material=material,
+        loading=loading,
+        usage=usage,
+        criteria=criteria,
+        owner=read_owner(value("owner")),
+        detection=detection,
+        history=read_history(value("history"), usage),
+        previous=read_previous(value("previous")),
+        shortfalls=read_shortfalls(value("look")),
+        missing=tuple(missing),
+    )
+
+
+def _check_version(fields: Fields) -> None:
+    if fields.number("case") != 1:
+        raise fields.refuse("case", "only case documents of version 1 are read.")
+    if "population" in fields and not isinstance(fields.values["population"], dict):
+        raise fields.refuse("population", "an object is needed here.")
+    if "seed" in fields:
+        seed = fields.number("seed", least=0.0)
+        if seed != int(seed):
+            raise fields.refuse("seed", "a whole number is needed here.")
+
+
+def _check_possible(crack: Crack, body: Any) -> None:
+    kind = crack.kind
+    x = kind.front(crack.depth, crack.length, body)
+    why = kind.impossible(x, body)
+    if why is None:
+        return
+    within = "crack" if crack.found else "crack.assumed"
+    keys = [key for key in ("depth_mm", "length_mm") if key in kind.sizes + kind.optional_sizes]
+    room = np.atleast_1d(kind.wall(x, body))
+    short = [key for key, left in zip(keys, room, strict=False) if not left > 0.0]
+    raise CaseRefused(f"{within}.{short[0]}" if short else within, why)

@@ -1,0 +1,147 @@
+"""Reads ``loading``: the peak load, what is said of residual stress, and the cycles."""
+
+from typing import Any
+
+from assessment.document.case import Loading, Missing
+from assessment.document.crack import TABLE_POINTS
+from assessment.document.fields import Fields
+from assessment.document.refusal import CaseRefused
+from assessment.growth import CycleBlock
+from assessment.kinds.base import Kind
+
+CYCLE_BINS = 200
+# A cycle may exceed the peak by what rounding in a decimal document can make of equal numbers.
+PEAK_SLACK = 1e-9
+
+_KEYS = ("peak", "residual", "cycles", "temperature_c", "reducible_part", "cycles_fall")
+
+
+def read_loading(value: Any, kind: Kind, missing: list[Missing]) -> Loading:
+    """The loading section; residual stress or cycles that are not there go to ``missing``.
+
+    Two keys are ours: ``reducible_part`` (0 to 1) is the part of the peak load that a limiter can
+    take away, ``cycles_fall`` says that the cycles fall in the same proportion as the peak.
+    """
+    loading = Fields("loading", value, _KEYS)
+    peak = _peak(loading, kind)
+    cycles, cycles_said = _cycles(loading, kind, peak, missing)
+    said, given = _residual(loading, missing)
+    return Loading(
+        peak=peak,
+        cycles=cycles,
+        cycles_said=cycles_said,
+        residual_said=said,
+        residual_given=given,
+        temperature=loading.number_or_none("temperature_c", least=-273.15),
+        reducible=loading.number_or_none("reducible_part", above=0.0, most=1.0),
+        cycles_fall=loading.flag("cycles_fall", False),
+    )
+
+
+def load_name(key: str) -> str:
+    """``membrane_mpa`` → ``membrane``."""
+    return key.rpartition("_")[0]
+
+
+def with_word(key: str, word: str) -> str:
+    """``membrane_mpa``, ``range`` → ``membrane_range_mpa``."""
+    name, _, unit = key.rpartition("_")
+    return f"{name}_{word}_{unit}"
+
+
+def _peak(loading: Fields, kind: Kind) -> dict[str, float]:
+    peak = Fields(loading.path("peak"), loading.raw("peak"), (*kind.load_keys, "profile"))
+    _refuse_profile(peak)
+    if not any(key in peak for key in kind.load_keys):
+        raise CaseRefused(peak.where, f"one of {', '.join(kind.load_keys)} is needed.")
+    return {load_name(key): peak.number_or_none(key) or 0.0 for key in kind.load_keys}
+
+
+def _refuse_profile(fields: Fields) -> None:
+    if "profile" in fields:
+        raise fields.refuse("profile", "a stress profile is not computed yet.")
+
+
+def _residual(loading: Fields, missing: list[Missing]) -> tuple[str | None, bool]:
+    if "residual" not in loading:
+        why = 'residual stress is missing; where there is none, write "none: " and why.'
+        missing.append(Missing(loading.path("residual"), why))
+        return None, False
+    said = loading.says_none("residual")
+    if said is not None:
+        return said, False
+    keys = ("membrane_mpa", "bending_mpa", "profile")
+    fields = Fields(loading.path("residual"), loading.values["residual"], keys)
+    for key in keys[:2]:
+        fields.number_or_none(key)
+    if "profile" in fields:
+        fields.items("profile", TABLE_POINTS)
+    why = "residual stress is not computed yet, so all results leave it out."
+    missing.append(Missing(loading.path("residual"), why))
+    return None, True
+
+
+def _cycles(
+    loading: Fields, kind: Kind, peak: dict[str, float], missing: list[Missing]
+) -> tuple[tuple[CycleBlock, ...], str | None]:
+    if "cycles" not in loading:
+        why = 'the cycles are missing; where there are none, write "none: " and why.'
+        missing.append(Missing(loading.path("cycles"), why))
+        return (), None
+    said = loading.says_none("cycles")
+    if said is not None:
+        return (), said
+    keys = [with_word(key, word) for word in ("range", "max") for key in kind.load_keys]
+    known = (*keys, "stress_ratio", "per_usage", "profile")
+    entries = loading.objects("cycles", known, CYCLE_BINS)
+    blocks = tuple(_block(entry, kind, peak) for entry in entries)
+    if not blocks:
+        raise loading.refuse(
+            "cycles", 'an empty list: where there are none, write "none: " and why.'
+        )
+    return blocks, None
+
+
+def _block(entry: Fields, kind: Kind, peak: dict[str, float]) -> CycleBlock:
+    _refuse_profile(entry)
+    ranges = _by_load(entry, kind, "range", least=0.0)
+    if not any(ranges.values()):
+        keys = ", ".join(with_word(key, "range") for key in kind.load_keys)
+        raise CaseRefused(entry.where, f"one of {keys} is needed, above 0.")
+    given = [key for key in kind.load_keys if with_word(key, "max") in entry]
+    ratio = entry.number_or_none("stress_ratio", below=1.0)
+    if (ratio is None) == (not given):
+        words = "both are given" if given else "one of them is needed"
+        raise entry.refuse("stress_ratio", f"either stress_ratio or the maxima: {words}.")
+    maxima = None if ratio is not None else _by_load(entry, kind, "max")
+    _check_peak(entry, kind, peak, ranges, ratio, maxima)
+    per_usage = entry.number("per_usage", above=0.0)
+    return CycleBlock(ranges=ranges, stress_ratio=ratio, maxima=maxima, per_usage=per_usage)
+
+
+def _by_load(entry: Fields, kind: Kind, word: str, least: float | None = None) -> dict[str, float]:
+    values = {}
+    for key in kind.load_keys:
+        value = entry.number_or_none(with_word(key, word), least=least)
+        values[load_name(key)] = value or 0.0
+    return values
+
+
+def _check_peak(
+    entry: Fields,
+    kind: Kind,
+    peak: dict[str, float],
+    ranges: dict[str, float],
+    ratio: float | None,
+    maxima: dict[str, float] | None,
+) -> None:
+    for key in kind.load_keys:
+        name = load_name(key)
+        if ranges[name] == 0.0 and with_word(key, "max") not in entry:
+            continue
+        largest = maxima[name] if maxima is not None else ranges[name] / (1.0 - (ratio or 0.0))
+        if largest > peak[name] + PEAK_SLACK * abs(peak[name]):
+            raise entry.refuse(
+                with_word(key, "range"),
+                f"the cycle's maximum of {largest:g} exceeds the peak of {peak[name]:g}.",
+            )

@@ -1,0 +1,160 @@
+"""Reads ``material``: strengths, toughness, growth law, and the bounding values of both."""
+
+from typing import Any
+
+from assessment.document.case import Bounding, Material, Missing
+from assessment.document.crack import TABLE_POINTS
+from assessment.document.fields import Fields, as_number
+from assessment.document.refusal import CaseRefused
+from assessment.growth import GrowthLaw, Paris, TwoStage, Walker
+from assessment.toughness import ByTemperature, EnergyRelease, Fixed, ToughnessModel
+
+_KEYS = (
+    "yield_mpa",
+    "ultimate_mpa",
+    "elastic_modulus_mpa",
+    "poisson",
+    "yielding",
+    "toughness",
+    "growth",
+    "bounding",
+    "typical",
+)
+_TOUGHNESS_KEYS = {
+    "fixed": ("k_mat_mpa_sqrt_m",),
+    "by-temperature": ("points",),
+    "energy-release": ("g_c_kj_per_m2", "plane"),
+    "charpy": ("energy_j", "temperature_c", "correlation"),
+    "master-curve": ("t0_c", "probability"),
+}
+_GROWTH_KEYS = {
+    "paris": ("c", "m"),
+    "two-stage": ("c1", "m1", "c2", "m2"),
+    "walker": ("c", "m", "gamma"),
+    "forman": ("c", "m", "k_c_mpa_sqrt_m"),
+    "forman-mettu": (
+        "c",
+        "n",
+        "p",
+        "q",
+        "k_c_mpa_sqrt_m",
+        "constraint_factor",
+        "peak_over_flow_stress",
+    ),
+}
+_THRESHOLD = "threshold_mpa_sqrt_m"
+
+
+def read_material(value: Any, missing: list[Missing]) -> Material:
+    """The material section; bounding values that are not there go to ``missing``."""
+    material = Fields("material", value, _KEYS)
+    strength = material.number("yield_mpa", above=0.0)
+    ultimate = material.number("ultimate_mpa", above=0.0)
+    if strength > ultimate:
+        why = f"yield {strength:g} MPa is above ultimate {ultimate:g} MPa."
+        raise material.refuse("yield_mpa", why)
+    typical = material.flag("typical", False)
+    if typical:
+        why = "the values are typical ones from a handbook, which are not for acceptance."
+        missing.append(Missing("material.typical", why))
+    yielding = None
+    if "yielding" in material:
+        yielding = material.choice("yielding", ("continuous", "discontinuous"))
+    return Material(
+        yield_strength=strength,
+        ultimate_strength=ultimate,
+        elastic_modulus=material.number("elastic_modulus_mpa", above=0.0),
+        poisson=material.number("poisson", least=0.0, below=0.5),
+        yielding=yielding,
+        toughness=read_toughness(material.path("toughness"), material.raw("toughness")),
+        growth=read_growth(material.path("growth"), material.raw("growth")),
+        bounding=_bounding(material, missing),
+        typical=typical,
+    )
+
+
+def _bounding(material: Fields, missing: list[Missing]) -> Bounding:
+    keys = ("toughness", "growth", "stands_for")
+    where = material.path("bounding")
+    fields = Fields(where, material.values.get("bounding") or {}, keys)
+    if "stands_for" not in fields:
+        why = "what the bounding values stand for is missing."
+        missing.append(Missing(fields.path("stands_for"), why))
+    toughness: ToughnessModel | None = None
+    growth: GrowthLaw | None = None
+    try:
+        toughness = read_toughness(fields.path("toughness"), fields.raw("toughness"))
+    except CaseRefused as refused:
+        _keep(refused, fields, "toughness", missing)
+    try:
+        growth = read_growth(fields.path("growth"), fields.raw("growth"))
+    except CaseRefused as refused:
+        _keep(refused, fields, "growth", missing)
+    return Bounding(toughness, growth, fields.text_or_none("stands_for"))
+
+
+def _keep(refused: CaseRefused, fields: Fields, key: str, missing: list[Missing]) -> None:
+    """A bounding value that is missing or not computed yet is a need; a wrong one is refused."""
+    if key in fields and not isinstance(refused, NotComputed):
+        raise refused
+    missing.append(Missing(refused.where, refused.why))
+
+
+class NotComputed(CaseRefused):
+    """A model that the document knows and the computation does not cover yet."""
+
+
+def read_toughness(where: str, value: Any) -> ToughnessModel:
+    """A toughness model; refused where it is not computed yet."""
+    name, fields = _model(where, value, "model", _TOUGHNESS_KEYS, ())
+    if name == "fixed":
+        return Fixed(fields.number("k_mat_mpa_sqrt_m", above=0.0))
+    if name == "by-temperature":
+        return ByTemperature(_points(fields))
+    if name == "energy-release":
+        plane = fields.choice("plane", ("stress", "strain"))
+        return EnergyRelease(fields.number("g_c_kj_per_m2", above=0.0), plane)
+    raise NotComputed(fields.path("model"), f"toughness by {name!r} is not computed yet.")
+
+
+def read_growth(where: str, value: Any) -> GrowthLaw:
+    """A growth law; refused where it is not computed yet."""
+    name, fields = _model(where, value, "law", _GROWTH_KEYS, (_THRESHOLD,))
+    threshold = fields.number_or_none(_THRESHOLD, least=0.0) or 0.0
+
+    def above_nil(key: str) -> float:
+        return fields.number(key, above=0.0)
+
+    if name == "paris":
+        return Paris(above_nil("c"), above_nil("m"), threshold)
+    if name == "two-stage":
+        c1, m1, c2, m2 = (above_nil(key) for key in _GROWTH_KEYS[name])
+        if m1 == m2:
+            raise fields.refuse("m2", "the two lines are parallel and do not cross.")
+        return TwoStage(c1, m1, c2, m2, threshold)
+    if name == "walker":
+        gamma = fields.number("gamma", least=0.0, most=1.0)
+        return Walker(above_nil("c"), above_nil("m"), gamma, threshold)
+    raise NotComputed(fields.path("law"), f"growth by {name!r} is not computed yet.")
+
+
+def _model(
+    where: str, value: Any, key: str, models: dict[str, tuple[str, ...]], also: tuple[str, ...]
+) -> tuple[str, Fields]:
+    if not isinstance(value, dict):
+        Fields(where, value, (key,))
+    name = Fields(where, {key: value.get(key)}, (key,)).choice(key, models)
+    return name, Fields(where, value, (key, *models[name], *also))
+
+
+def _points(fields: Fields) -> tuple[tuple[float, float], ...]:
+    points: list[tuple[float, float]] = []
+    for where, temperature, toughness in fields.pairs("points", as_number, TABLE_POINTS):
+        if toughness <= 0.0:
+            raise CaseRefused(where, "a toughness is above 0.")
+        if points and temperature <= points[-1][0]:
+            raise CaseRefused(where, "temperatures rise from point to point.")
+        points.append((temperature, toughness))
+    if not points:
+        raise fields.refuse("points", "a table needs at least one point.")
+    return tuple(points)

@@ -1,0 +1,164 @@
+"""One look at one size: stress intensity and failure at the peak load, with the look's values.
+
+The best estimate and the bounding look differ in what goes in (sizes, toughness, growth law, and
+where life ends), never in how it is computed. Growth from a size on is in ``lifetime``.
+"""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from assessment.corners import Corner
+from assessment.document import Case, CaseRefused
+from assessment.document.case import Material
+from assessment.failure import OPTION_1, Point, assess_point, option_1_curve
+from assessment.growth import CycleBlock, GrowthLaw
+from assessment.toughness import ToughnessModel, ToughnessResult, toughness
+from assessment.toughness.value import TemperatureMissing
+from assessment.validity import Floats, Mark
+
+Loads = Mapping[str, float]
+# Case contract: for the decision, fracture at K = toughness counts only below this load ratio.
+TOUGHNESS_ALONE_BELOW = 0.3
+
+
+@dataclass(frozen=True)
+class Look:
+    """What one look computes with.
+
+    toughness : MPa√m; growth : law; fracture : "toughness" or "diagram"
+    peak : peak load by load name, MPa; cycles : blocks per unit of usage
+    reserve : life ends at the first size at which the reserve on load is this
+    decides : True for the bounding look, which uses the toughness criterion at low load ratio only
+    """
+
+    material: Material
+    toughness: float
+    growth: GrowthLaw
+    fracture: str
+    peak: Loads
+    cycles: tuple[CycleBlock, ...]
+    reserve: float
+    decides: bool = False
+
+    def at_load(self, factor: float, cycles_fall: bool) -> "Look":
+        """The same look with the peak load (and the cycles, where they fall too) reduced."""
+        peak = {name: factor * value for name, value in self.peak.items()}
+        cycles = self.cycles
+        if cycles_fall:
+            cycles = tuple(scaled(block, factor) for block in cycles)
+        return replace(self, peak=peak, cycles=cycles)
+
+    @property
+    def has_diagram(self) -> bool:
+        """The diagram can be drawn for this material."""
+        return has_diagram(self.material)
+
+
+@dataclass(frozen=True)
+class Estimate:
+    """A size at the peak load. ``k`` in MPa√m by point of the front.
+
+    unsettled : why the criterion that the decision needs could not be used, or None
+    """
+
+    corner: Corner
+    k: Floats
+    point: Point
+    marks: tuple[Mark, ...]
+    unsettled: str | None = None
+
+
+def has_diagram(material: Material) -> bool:
+    """Yielding is known, and the strengths lie where the diagram is published."""
+    return material.yielding is not None and not diagram_marks(material)
+
+
+def diagram_marks(material: Material) -> tuple[Mark, ...]:
+    """Where the diagram's range is left; its limit on yield is that of the yield plateau."""
+    if material.yielding != "discontinuous":
+        return ()
+    return OPTION_1.marks({"σ_Y": material.yield_strength})
+
+
+def fracture_for(case: Case) -> str:
+    """The criterion stated, or the diagram where none is and it can be drawn."""
+    stated = case.criteria.fracture or "diagram"
+    return stated if has_diagram(case.material) else "toughness"
+
+
+def toughness_of(model: ToughnessModel, case: Case, where: str) -> ToughnessResult:
+    """Toughness at the case's temperature; refused where a table has none to be read at."""
+    material, temperature = case.material, case.loading.temperature
+    try:
+        return toughness(model, temperature, material.elastic_modulus, material.poisson)
+    except TemperatureMissing:
+        why = f"this is needed by {where}, which is given by temperature, and missing."
+        raise CaseRefused("loading.temperature_c", why) from None
+
+
+def limit_curve(material: Material) -> list[list[float]]:
+    """The limit of the diagram for drawing; empty where it cannot be drawn."""
+    if not has_diagram(material):
+        return []
+    points = option_1_curve(
+        material.yield_strength,
+        material.ultimate_strength,
+        material.elastic_modulus,
+        str(material.yielding),
+    )
+    return [list(point) for point in points]
+
+
+def scaled(block: CycleBlock, factor: float) -> CycleBlock:
+    """A cycle block with all its stresses multiplied."""
+    maxima = block.maxima
+    if maxima is not None:
+        maxima = {name: factor * value for name, value in maxima.items()}
+    ranges = {name: factor * value for name, value in block.ranges.items()}
+    return replace(block, ranges=ranges, maxima=maxima)
+
+
+def loads_for(corner: Corner, loads: Loads) -> Loads:
+    """The loads as the corner's kind takes them.
+
+    A through crack takes membrane stress alone. What bends the wall then counts as membrane at
+    its outer-fibre value, which nowhere along the front is less than what truly acts there.
+    """
+    names = [key.rpartition("_")[0] for key in corner.kind.load_keys]
+    if all(name in names for name in loads):
+        return loads
+    extra = sum(abs(value) for name, value in loads.items() if name not in names)
+    return {name: loads.get(name, 0.0) + (extra if name == "membrane" else 0.0) for name in names}
+
+
+def arrays(loads: Loads) -> dict[str, Floats]:
+    """Loads as the kinds take them."""
+    return {name: np.asarray(value, dtype=float) for name, value in loads.items()}
+
+
+def estimate(look: Look, corner: Corner) -> Estimate:
+    """Stress intensity and failure of one size at the peak load. ``corner`` is not broken."""
+    loads = arrays(loads_for(corner, look.peak))
+    kind, x, body = corner.kind, corner.x, corner.body
+    k = np.asarray(kind.stress_intensity(x, loads, body), dtype=float)
+    given = (kind, x, loads, body, look.material, look.toughness)
+    point, unsettled = assess_point(*given, look.fracture), None
+    alone = look.fracture == "toughness" and not point.load_ratio < TOUGHNESS_ALONE_BELOW
+    if look.decides and alone:
+        if look.has_diagram:
+            point = assess_point(*given, "diagram")
+        else:
+            unsettled = _unsettled(look.material, point.load_ratio)
+    return Estimate(corner, k, point, tuple(kind.marks(x, body)), unsettled)
+
+
+def _unsettled(material: Material, load_ratio: float) -> str:
+    why = "material.yielding is missing"
+    if material.yielding is not None:
+        why = " ".join(mark.sentence() for mark in diagram_marks(material))
+    return (
+        f"The load ratio is {load_ratio:.3g}, where the diagram is needed (from "
+        f"{TOUGHNESS_ALONE_BELOW:g} on), and it cannot be used: {why}."
+    )

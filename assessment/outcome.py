@@ -1,0 +1,228 @@
+"""What was found, written as the outcome of the case contract: sizes back in mm, dates as text.
+
+Beside the contract's keys an outcome carries:
+
+criterion          what failure was judged by: "toughness" or "diagram"
+failure            also reference_stress_mpa, cause, criterion, why_not
+bounding.kind      the kind it is assessed as; bounding.became_through; bounding.lacks: keys that
+                   are missing, with best-estimate values in their place
+rules              also "growth measured …" (row 3 of the table), which is not computed yet
+rate               usage per day behind the dates, and how it came about
+restriction        null, or {"factor", "peak": {…}, "words"} where a reduced load restores reserve
+stop_size          also new_crack {"depth_mm", "length_mm"} or null, and why_not
+disposition        also conditions, and before_return (repair before return to service)
+figures            what the plots need: diagram (limit curve and points), growth (paths)
+"""
+
+from collections.abc import Mapping
+from typing import Any
+
+import numpy as np
+
+from assessment.cautions import cautions
+from assessment.document.case import Case
+from assessment.engine import ENGINE
+from assessment.estimate import Estimate, Look, arrays, limit_curve, loads_for
+from assessment.failure import OPTION_1, Point
+from assessment.interval import Next, Rule, rate
+from assessment.lifetime import Critical, LifeFound, growth_now
+from assessment.procedure import Found
+from assessment.stop_size import StopSize
+from assessment.working import working
+
+
+def outcome_of(case: Case, found: Found) -> dict[str, Any]:
+    """The outcome as plain values, still to be settled."""
+    return {
+        "outcome": 1,
+        "engine": dict(ENGINE),
+        "criterion": found.best.point.fracture,
+        "stress_intensity": _stress_intensity(case, found.best_look, found.best),
+        "toughness_mpa_sqrt_m": found.best_look.toughness,
+        "failure": _failure(found.best_look, found.best),
+        "critical": _critical(found.best_critical),
+        "growth_now": growth_now(found.best_look, found.best.corner),
+        "life": _life(found.best_life),
+        "bounding": _bounding(case, found),
+        "forecast": None,
+        "rules": [_rule(one) for one in found.rules],
+        "rate": _rate(case),
+        "next_inspection": _next(found.next),
+        "restriction": _restriction(found),
+        "stop_size": _stop(found),
+        "disposition": {
+            "verdict": found.decision.verdict,
+            "reasons": list(found.decision.reasons),
+            "conditions": list(found.decision.conditions),
+            "before_return": found.decision.before_return,
+        },
+        "cautions": list(cautions(case, found.marks, found.bounding.corner.became)),
+        "working": working(case, found),
+        "figures": _figures(found),
+    }
+
+
+def mm(metres: float | None) -> float | None:
+    """m → mm; None stays None."""
+    return None if metres is None else 1e3 * float(metres)
+
+
+def finite(value: float | None) -> float | None:
+    """The number, or None where it is not finite and stands for "no limit"."""
+    return None if value is None or not np.isfinite(value) else float(value)
+
+
+def _stress_intensity(case: Case, look: Look, one: Estimate) -> list[dict[str, Any]]:
+    corner = one.corner
+    loads = arrays(loads_for(corner, look.peak))
+    nominal = corner.kind.nominal_stress(loads, corner.body)
+    size = float(corner.x[0])  # a of the contract: depth, or half or whole of a length
+    residual = None if case.loading.residual_said is None else 0.0
+    return [
+        {
+            "at": name,
+            "k_mpa_sqrt_m": float(k),
+            "geometry_factor": None
+            if not nominal
+            else float(k) / (float(nominal) * float(np.sqrt(np.pi * size))),
+            "residual_k_mpa_sqrt_m": residual,
+        }
+        for name, k in zip(corner.kind.points, np.ravel(one.k), strict=True)
+    ]
+
+
+def _failure(look: Look, one: Estimate | None) -> dict[str, Any] | None:
+    if one is None:
+        return None
+    point = one.point
+    return {
+        "load_ratio": finite(point.load_ratio),
+        "toughness_ratio": finite(point.toughness_ratio),
+        "reserve_on_load": finite(point.reserve),
+        "acceptable": point.acceptable,
+        "reference_stress_mpa": finite(point.load_ratio * look.material.yield_strength),
+        "cause": point.cause,
+        "criterion": point.fracture,
+        "why_not": _why_no_reserve(point),
+    }
+
+
+def _why_no_reserve(point: Point) -> str | None:
+    if point.reserve is not None:
+        return None
+    if point.acceptable is None:
+        return "stress intensity or reference stress could not be computed at this size"
+    return "no factor on this load brings the crack to the limit: nothing opens it"
+
+
+def _critical(one: Critical) -> dict[str, Any]:
+    return {
+        "depth_mm": mm(one.depth),
+        "length_mm": mm(one.length),
+        "stress_mpa": finite(one.stress),
+        "cause": one.cause,
+        "why_not": one.why,
+    }
+
+
+def _life(one: LifeFound) -> dict[str, Any]:
+    return {
+        "cycles": finite(one.cycles),
+        "usage": finite(one.usage),
+        "ends_by": one.ends_by,
+        "why_not": one.why,
+        "path": [list(row) for row in one.path],
+    }
+
+
+def _bounding(case: Case, found: Found) -> dict[str, Any]:
+    bounding = found.bounding
+    return {
+        "depth_mm": mm(bounding.corner.depth),
+        "length_mm": mm(bounding.corner.length),
+        "kind": bounding.corner.kind.name,
+        "became_through": bounding.corner.became,
+        "toughness_mpa_sqrt_m": found.bounding_look.toughness,
+        "stands_for": case.material.bounding.stands_for,
+        "failure": _failure(found.bounding_look, bounding.estimate),
+        "life": _life(bounding.life),
+        "lacks": list(found.lacks),
+    }
+
+
+def _rule(one: Rule) -> dict[str, Any]:
+    return {
+        "rule": one.rule,
+        "usage": one.usage,
+        "on": None if one.on is None else one.on.isoformat(),
+        "why_not": one.why_not,
+    }
+
+
+def _rate(case: Case) -> dict[str, Any] | None:
+    found = rate(case.usage)
+    return None if found is None else {"per_day": found.per_day, "from": found.words}
+
+
+def _next(one: Next | None) -> dict[str, Any]:
+    if one is None:
+        return {"usage": None, "on": None, "governed_by": None, "days": None}
+    return {
+        "usage": one.usage,
+        "on": one.on.isoformat(),
+        "governed_by": one.governed_by,
+        "days": one.days,
+    }
+
+
+def _restriction(found: Found) -> dict[str, Any] | None:
+    if found.reduced is None:
+        return None
+    factor = found.reduced.factor
+    return {
+        "factor": factor,
+        "peak": {name: factor * value for name, value in found.bounding_look.peak.items()},
+        "reserve_on_load": finite(found.reduced.bounding.reserve),
+        "words": found.reduced.words,
+    }
+
+
+def _stop(found: Found) -> dict[str, Any]:
+    known, new = found.stop.known, found.stop.new
+    shown = known or new
+    return {
+        "depth_mm": None if shown is None else mm(shown.depth),
+        "length_mm": None if shown is None else mm(shown.length),
+        "new_crack": _size(new),
+        "why_not": found.stop.why_not,
+    }
+
+
+def _size(one: StopSize | None) -> dict[str, Any] | None:
+    return None if one is None else {"depth_mm": mm(one.depth), "length_mm": mm(one.length)}
+
+
+def _figures(found: Found) -> dict[str, Any]:
+    points: list[Mapping[str, Any]] = [_point("best estimate", found.best)]
+    if found.bounding.estimate is not None:
+        points.append(_point("bounding", found.bounding.estimate))
+    return {
+        "diagram": {
+            "method": OPTION_1.relation,
+            "limit_curve": limit_curve(found.best_look.material),
+            "points": [dict(point) for point in points],
+        },
+        "growth": {
+            "best_estimate": [list(row) for row in found.best_life.path],
+            "bounding": [list(row) for row in found.bounding.life.path],
+        },
+    }
+
+
+def _point(name: str, one: Estimate) -> dict[str, Any]:
+    return {
+        "name": name,
+        "load_ratio": finite(one.point.load_ratio),
+        "toughness_ratio": finite(one.point.toughness_ratio),
+        "acceptable": one.point.acceptable,
+    }
