@@ -36,7 +36,7 @@ class Range:
             inside &= (v > self.low) if self.low_open else (v >= self.low)
         if self.high is not None:
             inside &= (v < self.high) if self.high_open else (v <= self.high)
-        return inside
+        return np.asarray(inside)
 
 
 @dataclass(frozen=True)

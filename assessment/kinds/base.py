@@ -29,7 +29,7 @@ Body = Mapping[str, Any]
 
 @dataclass(frozen=True)
 class WorkingStep:
-    """One line of the printed working: step in words, formula, the numbers put in, value, source."""
+    """One line of the printed working: step in words, formula, numbers put in, value, source."""
 
     step: str
     formula: str

@@ -1,0 +1,20 @@
+"""Cycle blocks: how often which range comes in one unit of usage."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class CycleBlock:
+    """ranges : load name to range in MPa (≥ 0). Either stress_ratio (below 1, of all loads) or
+    maxima (load name to the cycle's largest value, MPa). per_usage : cycles per unit of usage."""
+
+    ranges: Mapping[str, float]
+    stress_ratio: float | None
+    maxima: Mapping[str, float] | None
+    per_usage: float
+
+
+def cycles_per_usage(blocks: Sequence[CycleBlock]) -> float:
+    """Cycles of all blocks in one unit of usage."""
+    return sum(block.per_usage for block in blocks)

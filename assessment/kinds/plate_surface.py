@@ -1,0 +1,94 @@
+"""plate-surface: a semi-elliptical crack in the surface of a plate, membrane and bending."""
+
+import numpy as np
+
+from assessment.relations import reference_stress, surface_crack
+from assessment.validity import Floats, Mark
+
+from . import parts, two_points
+from .base import Body, Kind, Loads, WorkingStep
+
+
+def _k(x: Floats, loads: Loads, body: Body) -> Floats:
+    membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
+    return surface_crack.stress_intensity(
+        x[0], x[1], membrane, bending, body["thickness"], body["width"]
+    )
+
+
+def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
+    membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
+    return reference_stress.surface(membrane, bending, x[0], x[1], body["thickness"], body["width"])
+
+
+def _checks(x: Floats, body: Body) -> parts.Checks:
+    values = surface_crack.validity_values(x[0], x[1], body["thickness"], body["width"])
+    return (
+        (surface_crack.VALIDITY, values),
+        (reference_stress.SURFACE, {"a/t": values["a/t"]}),
+    )
+
+
+def _impossible(x: Floats, body: Body) -> str | None:
+    if 2.0 * x[1] > body["width"]:
+        return (
+            f"the crack ({parts.millimetres(2 * x[1])}) is longer than the plate is wide "
+            f"({parts.millimetres(body['width'])})."
+        )
+    return two_points.deeper_than_wall(x, body)
+
+
+def _wall(x: Floats, body: Body) -> Floats:
+    return np.stack([body["thickness"] - x[0], body["width"] / 2.0 - x[1]])
+
+
+def _becomes(x: Floats, body: Body) -> tuple[str, float | None, float, Body] | None:
+    """Through the wall it is assessed as a through crack of its surface length."""
+    return ("plate-through-centre", None, float(2.0 * x[1]), body)
+
+
+def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
+    return parts.marks_of(_checks(x, body))
+
+
+def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
+    membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
+    return (
+        *two_points.k_steps(
+            x,
+            loads,
+            body,
+            _k,
+            "K = (σ_m + H σ_b) √(πa/Q) F(a/c, a/t, φ, c/W)",
+            surface_crack.VALIDITY.source,
+        ),
+        parts.step_reference(
+            "σ_ref = [P_b + √(P_b² + 9 P_m² (1 − α)²)] / [3 (1 − α)²], α = (a/t)/(1 + t/c)",
+            f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, a = {parts.millimetres(x[0])}, "
+            f"c = {parts.millimetres(x[1])}, t = {parts.millimetres(body['thickness'])}",
+            _reference(x, loads, body),
+            reference_stress.SURFACE.source,
+        ),
+    )
+
+
+KIND = Kind(
+    name="plate-surface",
+    words="a crack in the surface of a plate, not through it",
+    body_keys=("width_mm", "thickness_mm"),
+    load_keys=("membrane_mpa", "bending_mpa"),
+    sizes=("depth_mm", "length_mm"),
+    points=two_points.AT,
+    front=two_points.front,
+    sizes_of=lambda x, body: (x[0], 2.0 * x[1]),
+    stress_intensity=_k,
+    reference_stress=_reference,
+    nominal_stress=parts.nominal,
+    impossible=_impossible,
+    wall=_wall,
+    inside=lambda x, body: parts.all_hold(_checks(x, body)),
+    marks=_marks,
+    relations=(surface_crack.VALIDITY, reference_stress.SURFACE),
+    working=_working,
+    becomes=_becomes,
+)

@@ -1,0 +1,42 @@
+"""What surface cracks with a depth and a length share."""
+
+from collections.abc import Callable
+
+import numpy as np
+
+from assessment.validity import Floats
+
+from . import parts
+from .base import Body, Loads, WorkingStep
+
+AT = ("deepest", "surface")
+
+
+def front(depth: float | None, length: float | None, body: Body) -> Floats:
+    """x[0] = a, x[1] = c, half the length along the surface."""
+    if depth is None or length is None:
+        raise ValueError("this kind needs depth and length")
+    return np.asarray([depth, length / 2.0])
+
+
+def deeper_than_wall(x: Floats, body: Body) -> str | None:
+    if x[0] > body["thickness"]:
+        return (
+            f"the crack ({parts.millimetres(x[0])}) is deeper than the wall "
+            f"({parts.millimetres(body['thickness'])})."
+        )
+    return None
+
+
+def k_steps(
+    x: Floats, loads: Loads, body: Body, k: Callable[..., Floats], formula: str, source: str
+) -> tuple[WorkingStep, ...]:
+    """A line for each of the two points."""
+    values = k(x, loads, body)
+    said = ", ".join(f"{name} = {float(value):g} MPa" for name, value in sorted(loads.items()))
+    numbers = f"a = {parts.millimetres(x[0])}, c = {parts.millimetres(x[1])}, {said}"
+    words = ("deepest point (φ = 90°)", "surface point (φ = 0)")
+    return tuple(
+        parts.step_k(word, formula, numbers, value, source)
+        for word, value in zip(words, values, strict=True)
+    )
