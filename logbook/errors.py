@@ -28,7 +28,7 @@ class Refusal(Exception):
         self.status = status
 
     def as_problem(self) -> dict[str, object]:
-        """The body of an API answer (RFC 9457 members ``title`` and ``status``, with ours beside)."""
+        """The body of an API answer: ``title`` and ``status`` of RFC 9457, with ours beside."""
         return {
             "code": self.code,
             "title": self.sentence,

@@ -9,13 +9,12 @@ from logbook.entry import Known, KnownCrack, KnownLocation
 from logbook.models import Component, Crack, Inspection, Location
 
 
-def known_of(component: Component) -> Known:
-    last = (
-        Inspection.objects.filter(component=component)
-        .order_by("-found_on", "-leaf__index")
-        .values_list("found_on", "counter")
-        .first()
-    )
+def known_of(component: Component, before: Inspection | None = None) -> Known:
+    """The facts as they stand, or as they stood when an earlier entry was written."""
+    looks = Inspection.objects.filter(component=component)
+    if before is not None:
+        looks = looks.filter(leaf__index__lt=before.leaf.index)
+    last = looks.order_by("-found_on", "-leaf__index").values_list("found_on", "counter").first()
     bodies = {
         location.pk: body
         for location in component.locations.all()
@@ -31,7 +30,7 @@ def known_of(component: Component) -> Known:
             for location in component.locations.all()
         },
         cracks={
-            crack.number: _crack(crack, bodies.get(crack.location_id))
+            crack.number: _crack(crack, bodies.get(crack.location_id), before)
             for crack in component.cracks.all()
         },
     )
@@ -56,8 +55,10 @@ def _location(location: Location, body: dict[str, object] | None) -> KnownLocati
     )
 
 
-def _crack(crack: Crack, body: dict[str, object] | None) -> KnownCrack:
+def _crack(crack: Crack, body: dict[str, object] | None, before: Inspection | None) -> KnownCrack:
     sizes = rows.measurements(crack)
+    if before is not None:
+        sizes = [m for m in sizes if m.leaf.index < before.leaf.index]
     last = sizes[-1] if sizes else None
     sizing = {}
     if body and last is not None and isinstance(body.get("sizing"), dict):

@@ -1,4 +1,4 @@
-"""One shape for every refusal: what the framework raises is put into the words of logbook.errors."""
+"""One shape for every refusal: what the framework raises is put into our own words."""
 
 from typing import Any
 

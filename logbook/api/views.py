@@ -1,0 +1,294 @@
+"""The endpoints: thin. Look-ups go through logbook.access, changes through logbook.actions."""
+
+from collections.abc import Mapping
+from typing import Any, ClassVar
+
+from django.db.models import QuerySet
+from django.http import FileResponse
+from drf_spectacular.utils import extend_schema
+from rest_framework import generics, parsers
+from rest_framework.request import Request
+from rest_framework.response import Response
+from rest_framework.views import APIView
+
+from logbook import access
+from logbook.actions.add_photo import add_photo, photos_path
+from logbook.actions.answer import answer_now
+from logbook.actions.known import known_of
+from logbook.actions.log_inspection import log_inspection
+from logbook.actions.strike_out import strike_out
+from logbook.actions.tray import keep_in_tray
+from logbook.entry import read_inspection, text
+from logbook.errors import Refusal, invalid, not_found
+from logbook.models import (
+    Assessment,
+    AssessmentAsked,
+    Component,
+    Crack,
+    Inspection,
+    Record,
+    Site,
+    Standing,
+)
+from logbook.records.issue import stored_bytes
+
+from . import shapes
+
+PROBLEMS = dict.fromkeys((400, 403, 404, 409), shapes.Problem)
+
+
+class Sites(generics.ListAPIView[Site]):
+    """The sites that you may see."""
+
+    serializer_class = shapes.SiteShape
+    queryset = Site.objects.none()
+
+    def get_queryset(self) -> QuerySet[Site]:
+        return access.sites_of(self.request.user).order_by("slug")
+
+
+class Components(generics.ListAPIView[Component]):
+    """The components of your sites, with their places in walking order."""
+
+    serializer_class = shapes.ComponentShape
+    queryset = Component.objects.none()
+    filterset_fields = ("tag",)
+
+    def get_queryset(self) -> QuerySet[Component]:
+        rows = Component.objects.filter(site__in=access.sites_of(self.request.user))
+        return rows.select_related("site").prefetch_related("locations").order_by("site_id", "tag")
+
+
+class OneComponent(APIView):
+    @extend_schema(responses={200: shapes.ComponentShape, **PROBLEMS})
+    def get(self, request: Request, pk: int) -> Response:
+        component = access.component_for(request.user, pk)
+        return Response(shapes.ComponentShape(component).data)
+
+
+class Standings(generics.ListAPIView[Standing]):
+    """What binds now, soonest due first."""
+
+    serializer_class = shapes.StandingShape
+    queryset = Standing.objects.none()
+    filterset_fields: ClassVar = {"location__component": ["exact"], "verdict": ["exact"]}
+
+    def get_queryset(self) -> QuerySet[Standing]:
+        rows = Standing.objects.filter(site__in=access.sites_of(self.request.user))
+        return rows.select_related("location__component__site", "crack").order_by("due_on", "pk")
+
+
+class Cracks(generics.ListAPIView[Crack]):
+    serializer_class = shapes.CrackShape
+    queryset = Crack.objects.none()
+    filterset_fields = ("component", "location")
+
+    def get_queryset(self) -> QuerySet[Crack]:
+        sites = access.sites_of(self.request.user)
+        return Crack.objects.filter(component__site__in=sites).order_by("component_id", "number")
+
+
+class OneCrack(APIView):
+    @extend_schema(responses={200: shapes.CrackShape, **PROBLEMS})
+    def get(self, request: Request, pk: int) -> Response:
+        return Response(shapes.CrackShape(access.crack_for(request.user, pk)).data)
+
+
+class Assessments(generics.ListAPIView[Assessment]):
+    """Proposals, newest first."""
+
+    serializer_class = shapes.ProposalShape
+    queryset = Assessment.objects.none()
+    filterset_fields = ("location", "crack", "verdict")
+
+    def get_queryset(self) -> QuerySet[Assessment]:
+        sites = access.sites_of(self.request.user)
+        return Assessment.objects.filter(location__component__site__in=sites).order_by("-pk")
+
+
+class OneAssessment(APIView):
+    @extend_schema(responses={200: shapes.AssessmentShape, **PROBLEMS})
+    def get(self, request: Request, pk: int) -> Response:
+        return Response(shapes.AssessmentShape(access.assessment_for(request.user, pk)).data)
+
+
+class Inspections(generics.ListAPIView[Inspection]):
+    """Entries, newest first; POST writes one."""
+
+    serializer_class = shapes.InspectionShape
+    queryset = Inspection.objects.none()
+    filterset_fields = ("component", "found_on", "key")
+
+    def get_queryset(self) -> QuerySet[Inspection]:
+        rows = Inspection.objects.filter(component__site__in=access.sites_of(self.request.user))
+        return rows.select_related("leaf").prefetch_related(
+            "findings__photos", "findings__crack", "findings__measurement", "findings__strike_out"
+        ).order_by("-pk")  # fmt: skip
+
+    @extend_schema(
+        request=shapes.InspectionSent,
+        responses={201: shapes.InspectionAnswer, 200: shapes.InspectionAnswer, **PROBLEMS},
+    )
+    def post(self, request: Request) -> Response:
+        """Write an inspection.
+
+        What does not fit is refused with its fields named, and nothing is written. With the query
+        parameter ``keep=tray`` such an entry is kept whole for a person to look at (202): a
+        sender that cannot ask its author back never loses one. Sent again with the same key and
+        content, the first answer comes again (200); the same key with other content is 409, both
+        kept in the tray.
+        """
+        data = request.data
+        if not isinstance(data, Mapping):
+            raise invalid("An entry is an object of named fields.", {})
+        component = access.component_for(request.user, data.get("component"), "log")
+        try:
+            draft = read_inspection(data, known_of(component))
+        except Refusal as refusal:
+            again = _written_before(request.user, data)
+            if again is not None:
+                return _answer(again, 200)
+            if request.query_params.get("keep") != "tray":
+                raise
+            item = keep_in_tray(
+                request.user, component, str(data.get("key", "")), dict(data), refusal
+            )
+            return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
+        before = Inspection.objects.filter(key=draft.key).exists()
+        inspection = log_inspection(request.user, draft)
+        answer_now(inspection)
+        return _answer(inspection, 200 if before else 201)
+
+
+def _written_before(person: Any, data: Mapping[str, Any]) -> Inspection | None:
+    """The entry that this very content wrote before.
+
+    Read a second time, a harmless repeat can look wrong: its own size is the last one now, and
+    its own counter the last reading. The content that was kept decides.
+    """
+    try:
+        key = text.key(data.get("key"))
+    except text.Unreadable:
+        return None
+    found = Inspection.objects.filter(key=key, author=person).select_related("leaf").first()
+    if found is None:
+        return None
+    # What the entry was read against then: everything before it.
+    try:
+        draft = read_inspection(data, known_of(found.component, before=found))
+    except Refusal:
+        return None
+    return log_inspection(person, draft)
+
+
+def _answer(inspection: Inspection, status: int) -> Response:
+    owed = AssessmentAsked.objects.filter(because_act=inspection.leaf_id).exists()
+    proposals = Assessment.objects.filter(because_act=inspection.leaf_id).order_by("pk")
+    fresh = (
+        Inspection.objects.select_related("leaf")
+        .prefetch_related("findings__photos", "findings__crack")
+        .get(pk=inspection.pk)
+    )
+    made = {
+        "key": fresh.key,
+        "inspection": fresh,
+        "pending": owed,
+        "proposals": proposals,
+    }
+    return Response(shapes.InspectionAnswer(made).data, status=status)
+
+
+class OneInspection(APIView):
+    @extend_schema(responses={200: shapes.InspectionAnswer, **PROBLEMS})
+    def get(self, request: Request, pk: int) -> Response:
+        return _answer(access.inspection_for(request.user, pk), 200)
+
+
+class StrikeOuts(APIView):
+    @extend_schema(
+        request=shapes.StrikeOutSent, responses={201: shapes.StrikeOutAnswer, **PROBLEMS}
+    )
+    def post(self, request: Request, pk: int) -> Response:
+        """Strike a finding out, and where sizes are given write the right ones in its place."""
+        sent = request.data if isinstance(request.data, Mapping) else {}
+        sizes = {}
+        for name in ("depth_mm", "length_mm"):
+            if sent.get(name) not in (None, ""):
+                try:
+                    sizes[name] = text.decimal(sent[name])
+                except text.Unreadable as said:
+                    raise invalid("A size cannot be read.", {name: [str(said)]}) from None
+        basis = sent.get("depth_basis")
+        made = strike_out(
+            request.user,
+            pk,
+            str(sent.get("reason", "")),
+            depth_basis=None if basis is None else str(basis),
+            **sizes,
+        )
+        answer = {"finding": pk, "replaced_by": made.replaced_by_id, "reason": made.reason}
+        return Response(answer, status=201)
+
+
+class AnyBytes(parsers.BaseParser):
+    """The photo itself, as it is."""
+
+    media_type = "application/octet-stream"
+
+    def parse(
+        self, stream: Any, media_type: str | None = None, parser_context: Any = None
+    ) -> dict[str, bytes]:
+        from django.conf import settings
+
+        return {"data": stream.read(settings.PHOTO_MAX_BYTES + 1)}
+
+
+class OnePhoto(APIView):
+    parser_classes = (AnyBytes,)
+
+    @extend_schema(responses={(200, "application/octet-stream"): bytes, **PROBLEMS})
+    def get(self, request: Request, pk: int) -> FileResponse:
+        photo = access.photo_for(request.user, pk)
+        if photo.arrived_at is None:
+            raise not_found("photo")
+        return FileResponse(
+            photos_path(photo.sha256).open("rb"),
+            as_attachment=True,
+            filename=f"{photo.sha256[:12]}",
+            content_type="application/octet-stream",
+        )
+
+    @extend_schema(
+        request={"application/octet-stream": bytes},
+        responses={200: shapes.PhotoShape, **PROBLEMS},
+    )
+    def put(self, request: Request, pk: int) -> Response:
+        """Send the bytes of a photo that an entry declared by its SHA-256."""
+        sent = request.data.get("data") if isinstance(request.data, Mapping) else None
+        photo = add_photo(request.user, pk, sent or b"")
+        return Response(shapes.PhotoShape(photo).data)
+
+
+class Records(generics.ListAPIView[Record]):
+    serializer_class = shapes.RecordShape
+    queryset = Record.objects.none()
+    filterset_fields = ("state",)
+
+    def get_queryset(self) -> QuerySet[Record]:
+        sites = access.sites_of(self.request.user)
+        return Record.objects.filter(site__in=sites).order_by("-number")
+
+
+class RecordFile(APIView):
+    @extend_schema(responses={(200, "application/pdf"): bytes, **PROBLEMS})
+    def get(self, request: Request, number: int) -> FileResponse:
+        """The stored bytes: a reprint is what was issued."""
+        import io
+
+        record = access.record_for(request.user, number)
+        return FileResponse(
+            io.BytesIO(stored_bytes(record)),
+            as_attachment=True,
+            filename=f"record-{record.number}.pdf",
+            content_type="application/pdf",
+        )
