@@ -35,4 +35,6 @@ def frame(request: HttpRequest) -> dict[str, Any]:
         "my_roles": roles,
         "decides": bool(roles & DECIDING),
         "now": clock.now(),
+        # Pages of one site say its own zone.
+        "foot_zone": "UTC",
     }

@@ -22,11 +22,13 @@ from logbook.models import (
     AssessmentAsked,
     Component,
     Finding,
+    Inspection,
+    Photo,
     Standing,
 )
 
 from .asked import Asked, may
-from .forms.inspection import Block, InspectionForm
+from .forms.inspection import HEAD, Block, InspectionForm
 from .lines import RELATED, finding_words, lines, size_words, strictest_first
 
 
@@ -50,10 +52,19 @@ def inspect(request: Asked, pk: int) -> HttpResponse:
 
 
 def _form(component: Component, request: Asked) -> InspectionForm:
-    start = {"inspector_name": str(request.user)}
     open_cracks = component.cracks.filter(closed_at__isnull=True)
     posted = request.POST if request.method == "POST" else None
-    return InspectionForm(component, component.locations.all(), open_cracks, posted, start)
+    return InspectionForm(
+        component, component.locations.all(), open_cracks, posted, _written_before(component)
+    )
+
+
+def _written_before(component: Component) -> dict[str, list[str]]:
+    """What was written in the same boxes before: offered while typing, never filled in."""
+    names = [name for name, _label, _hint, kind in HEAD if kind == "text"]
+    rows = component.site.components.values_list("pk", flat=True)
+    looks = Inspection.objects.filter(component__in=rows).order_by("-pk").values(*names)[:40]
+    return {name: sorted({look[name] for look in looks if look[name]}) for name in names}
 
 
 def _around(form: InspectionForm) -> dict[str, Any]:

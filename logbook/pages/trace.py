@@ -131,7 +131,7 @@ def _name_and_tie(steps: list[Step]) -> None:
         for leaf in Leaf.objects.filter(pk__in=[s.leaf.pk for s in steps]).prefetch_related("names")
     }
     for step in steps:
-        step.who = names[step.leaf.pk].get("by") or _("the program")
+        step.who = names[step.leaf.pk].get("by", "")
         because = json.loads(bytes(step.leaf.payload)).get("because_of", [])
         for act in because:
             cause = by_act.get(str(act))

@@ -7,6 +7,8 @@ from zoneinfo import ZoneInfo
 from django.utils.formats import date_format
 from django.utils.translation import gettext as _
 
+from logbook.figures.words import counts
+
 NO_BREAK = "\N{NO-BREAK SPACE}"
 
 
@@ -36,11 +38,8 @@ def number(value: Decimal | float, decimal_sign: str = ".") -> str:
 
 
 def usage(at: Decimal, unit: str, decimal_sign: str) -> str:
-    """14,950 hours. The unit is the site's own word, so it is given in the plural only by adding
-    nothing to a word that already ends in s.
-    """
-    plural = unit if at == 1 or unit.endswith("s") else f"{unit}s"
-    return f"{number(at, decimal_sign)}{NO_BREAK}{plural}"
+    """14,950 hours."""
+    return f"{number(at, decimal_sign)}{NO_BREAK}{counts(unit)}"
 
 
 def by(

@@ -3,14 +3,13 @@
 import datetime
 from decimal import Decimal
 from typing import Any
-from zoneinfo import ZoneInfo
 
 from django import template
-from django.utils.formats import date_format
 from django.utils.html import format_html
 from django.utils.safestring import SafeString
 from django.utils.translation import gettext as _
 
+from logbook.figures import words
 from logbook.pages import writing
 
 register = template.Library()
@@ -29,8 +28,9 @@ def moment(at: datetime.datetime | None, time_zone: str = "UTC") -> str:
 
 
 @register.filter
-def clock_time(at: datetime.datetime, time_zone: str = "UTC") -> str:
-    return date_format(at.astimezone(ZoneInfo(time_zone)), "H:i")
+def counts(unit: str) -> str:
+    """What is counted, in the plural as the figures have it."""
+    return words.counts(unit)
 
 
 @register.simple_tag(takes_context=True)

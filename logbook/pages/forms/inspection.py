@@ -60,6 +60,7 @@ class Box:
     kind: str
     value: str
     said: Sequence[str] = ()
+    before: Sequence[str] = ()
 
 
 @dataclass
@@ -118,18 +119,18 @@ class InspectionForm:
         locations: Iterable[Location],
         cracks: Iterable[Crack],
         posted: Mapping[str, Any] | None = None,
-        start: Mapping[str, str] | None = None,
+        before: Mapping[str, Sequence[str]] | None = None,
     ) -> None:
         self.component = component
         self.posted = {} if posted is None else posted
-        self.start = start or {}
+        self.before = before or {}
         self.key = self._typed("key") or str(uuid.uuid4())
         self.sentence = ""
         self.said: dict[str, list[str]] = {}
         self.blocks = list(self._blocks(list(locations), list(cracks)))
 
     def _typed(self, name: str) -> str:
-        value = self.posted.get(name, self.start.get(name, ""))
+        value = self.posted.get(name, "")
         return value if isinstance(value, str) else ""
 
     def _blocks(self, locations: list[Location], cracks: list[Crack]) -> Iterable[Block]:
@@ -165,7 +166,15 @@ class InspectionForm:
         return [self._box(*one) for one in LATER]
 
     def _box(self, name: str, label: Any, hint: Any, kind: str) -> Box:
-        return Box(name, label, hint, kind, self._typed(name), self.said.get(name, ()))
+        return Box(
+            name,
+            label,
+            hint,
+            kind,
+            self._typed(name),
+            self.said.get(name, ()),
+            self.before.get(name, ()),
+        )
 
     def data(self) -> dict[str, Any]:
         """The whole entry as logbook/entry reads it. A place without an answer is left out."""

@@ -14,6 +14,7 @@ from typing import Any
 from django.utils.translation import gettext as _
 
 from logbook.errors import invalid
+from logbook.records.case_lines import UNITS
 
 NUMBER = re.compile(r"-?\d+(?:[.,]\d+)?(?:[eE][-+]?\d+)?")
 NAME = re.compile(r"[a-z0-9][a-z0-9_.-]{0,119}")
@@ -99,6 +100,22 @@ class Row:
     said: list[str] = field(default_factory=list)
 
     @property
+    def unit(self) -> str:
+        """By the ending of the name, as the case document has it."""
+        last = self.name.rsplit(".", 1)[-1]
+        return next((unit for ending, unit in UNITS if _ends(last, ending)), "")
+
+    @property
+    def label(self) -> str:
+        """ "loading, peak, membrane": the path in words, without the unit's ending."""
+        name = self.name
+        for ending, unit in UNITS:
+            if unit == self.unit and _ends(name.rsplit(".", 1)[-1], ending):
+                name = name[: -len(ending)]
+                break
+        return ", ".join(part.replace("_", " ") for part in name.split("."))
+
+    @property
     def spare(self) -> bool:
         """A row whose name is typed too."""
         return not self.name
@@ -177,6 +194,11 @@ class Values:
             elif not row.said:
                 row.said.extend(sentences)
         return left
+
+
+def _ends(name: str, ending: str) -> bool:
+    """A constant called c is no temperature: only longer names carry a unit."""
+    return name.endswith(ending) and len(name) > len(ending)
 
 
 def value_of(typed: str) -> Any:
