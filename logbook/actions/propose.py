@@ -100,7 +100,9 @@ def _read(outcome: dict[str, Any], location: Location) -> _Answer:
     proposed = outcome["disposition"]
     next_look = outcome.get("next_inspection") or {}
     stop = outcome.get("stop_size") or {}
-    on = next_look.get("on")
+    # A repair before return to service has no date to wait for: with one, the part could be used.
+    waits = not proposed.get("before_return")
+    on = next_look.get("on") if waits else None
     return _Answer(
         verdict=proposed["verdict"],
         reasons=list(proposed["reasons"]),
@@ -108,7 +110,7 @@ def _read(outcome: dict[str, Any], location: Location) -> _Answer:
         until_on=on_or_before(datetime.date.fromisoformat(on), location.component.site)
         if on
         else None,
-        until_at=_counter(next_look.get("usage")),
+        until_at=_counter(next_look.get("usage")) if waits else None,
         governed_by=next_look.get("governed_by") or "",
         limit=_limit(outcome),
         stop_depth_mm=stop.get("depth_mm"),
