@@ -7,6 +7,8 @@ from assessment.corners import Corner
 from assessment.estimate import Estimate, Look, estimate
 from assessment.lifetime import LifeFound, life, lives
 
+_OUTSIDE = "today's bounding size is outside a published range"
+
 
 @dataclass(frozen=True)
 class Bounding:
@@ -47,7 +49,7 @@ def bounding(look: Look, sizes: Sequence[Corner]) -> Bounding:
         estimate=worst,
         acceptable=acceptable,
         reserve=worst.point.reserve,
-        life=shortest_life(look, sizes, worst),
+        life=LifeFound(why=_OUTSIDE) if outside else shortest_life(look, sizes, worst),
         outside=outside,
         unsettled=next((one.unsettled for one in found if one.unsettled), None),
     )

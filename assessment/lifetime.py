@@ -4,6 +4,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
+from numpy.typing import NDArray
 
 from assessment.corners import Corner
 from assessment.estimate import (
@@ -129,6 +130,8 @@ def _life(look: Look, corner: Corner, grown: Growth, index: int) -> LifeFound:
     if end == "not converged" or not np.isfinite(usage):
         why = "the growth computation did not come to an end in the steps allowed"
         return LifeFound(path=path, why=why, converged=False)
+    if end == "out of range" and usage == 0.0:
+        return LifeFound(why="the size is outside a published range: growth is not computed")
     x = grown.x[:, index]
     if end == "failed":
         end = _cause(look, corner, x)
@@ -237,10 +240,10 @@ def _first_failing(look: Look, corner: Corner) -> Floats | None:
             high = middle
         else:
             low = middle
-    return corner.x * high
+    return np.asarray(corner.x * high)
 
 
-def _fails(look: Look, corner: Corner, kind: Kind, x: Floats) -> Floats:
+def _fails(look: Look, corner: Corner, kind: Kind, x: Floats) -> NDArray[np.bool_]:
     broken = np.min(np.atleast_2d(kind.wall(x, corner.body)), axis=0) <= 0.0
     with np.errstate(all="ignore"):
-        return broken | (margin(look, corner, x) <= 0.0)
+        return np.asarray(broken | (margin(look, corner, x) <= 0.0))

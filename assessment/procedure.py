@@ -128,7 +128,7 @@ def compute(case: Case) -> Found:
         next=governing(case, in_force),
         reduced=reduced,
         decision=decision,
-        stop=stop_sizes(case, look, lacks),
+        stop=stop_sizes(case, look, lacks, bool(decides.outside)),
         marks=(*best.marks, *toughness.marks),
     )
 

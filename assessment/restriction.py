@@ -16,7 +16,7 @@ from assessment.document.case import Case
 from assessment.estimate import Look
 from assessment.growth import CycleBlock
 
-_STEPS = 7
+_STEPS = 6
 
 
 @dataclass(frozen=True)

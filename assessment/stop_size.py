@@ -20,6 +20,7 @@ from dataclasses import dataclass, replace
 from typing import Any
 
 import numpy as np
+from numpy.typing import NDArray
 
 from assessment.corners import Corner, corners, sizes_to_corner
 from assessment.document.case import Case, Crack
@@ -58,11 +59,16 @@ class StopSizes:
     why_not: str | None = None
 
 
-def stop_sizes(case: Case, look: Look, lacks: Sequence[str]) -> StopSizes:
-    """The stop sizes under the bounding look. ``lacks``: keys that it needs and are missing."""
+def stop_sizes(case: Case, look: Look, lacks: Sequence[str], outside: bool) -> StopSizes:
+    """The stop sizes under the bounding look.
+
+    lacks : keys that it needs and are missing; outside : today's size is outside a range
+    """
     crack, per_day = case.crack, rate(case.usage)
     if lacks:
         return StopSizes(why_not=f"what it needs is missing: {', '.join(lacks)}")
+    if outside:
+        return StopSizes(why_not="today's bounding size is outside a published range")
     if crack.sizing is None:
         return StopSizes(why_not="crack.sizing, the error of a measurement here, is missing")
     if per_day is None or case.criteria.life_factor is None:
@@ -101,10 +107,16 @@ def _stops(case: Case, look: Look, day: float) -> Stops:
 
 
 def holds(look: Look, sizes: Sequence[Corner]) -> bool:
-    """Every corner is unbroken, inside the ranges, and has the reserve of the look."""
+    """Every corner is unbroken and has the reserve of the look, and the largest is in range.
+
+    Another corner may be out of range only because a small crack with a large sizing error may be
+    narrower than any front in the tables. That refers the case; it is no stop.
+    """
     if any(corner.broken is not None for corner in sizes):
         return False
-    return all(_stands(look, corner, x) for corner, x in _together(sizes))
+    largest = sizes[0]
+    inside = bool(np.all(largest.kind.inside(largest.x, largest.body)))
+    return inside and all(_stands(look, corner, x) for corner, x in _together(sizes))
 
 
 def lasts(look: Look, sizes: Sequence[Corner], usage: float) -> bool:
@@ -124,8 +136,11 @@ def _together(sizes: Sequence[Corner]) -> list[tuple[Corner, Floats]]:
 
 def _stands(look: Look, corner: Corner, x: Floats) -> bool:
     with np.errstate(all="ignore"):
-        inside = bool(np.all(corner.kind.inside(x, corner.body)))
-        return inside and bool(np.all(margin(look, corner, x) > 0.0))
+        return bool(np.all(_outside(corner, x) | (margin(look, corner, x) > 0.0)))
+
+
+def _outside(corner: Corner, x: Floats) -> NDArray[np.bool_]:
+    return np.asarray(~np.broadcast_to(corner.kind.inside(x, corner.body), x.shape[1:]))
 
 
 def _still_stands(look: Look, corner: Corner, start: Floats, usage: float) -> bool:
@@ -136,7 +151,8 @@ def _still_stands(look: Look, corner: Corner, start: Floats, usage: float) -> bo
             x = start + usage * np.asarray(rates(kind, x, body, look.growth, blocks))
         if not bool(np.all(np.isfinite(x))) or not bool(np.all(kind.wall(x, body) > 0.0)):
             return False
-    return _stands(look, corner, x)
+    left_range = bool(np.any(_outside(corner, x) & ~_outside(corner, start)))
+    return not left_range and _stands(look, corner, x)
 
 
 def first_stop(

@@ -104,8 +104,8 @@ def _cycles(
 
 def _block(entry: Fields, kind: Kind, peak: dict[str, float]) -> CycleBlock:
     _refuse_profile(entry)
-    ranges = _by_load(entry, kind, "range", least=0.0)
-    if not any(ranges.values()):
+    ranges = {name: r for name, r in _by_load(entry, kind, "range", least=0.0).items() if r}
+    if not ranges:
         keys = ", ".join(with_word(key, "range") for key in kind.load_keys)
         raise CaseRefused(entry.where, f"one of {keys} is needed, above 0.")
     given = [key for key in kind.load_keys if with_word(key, "max") in entry]
@@ -114,17 +114,17 @@ def _block(entry: Fields, kind: Kind, peak: dict[str, float]) -> CycleBlock:
         words = "both are given" if given else "one of them is needed"
         raise entry.refuse("stress_ratio", f"either stress_ratio or the maxima: {words}.")
     maxima = None if ratio is not None else _by_load(entry, kind, "max")
+    for name in maxima or ():
+        ranges.setdefault(name, 0.0)
     _check_peak(entry, kind, peak, ranges, ratio, maxima)
     per_usage = entry.number("per_usage", above=0.0)
     return CycleBlock(ranges=ranges, stress_ratio=ratio, maxima=maxima, per_usage=per_usage)
 
 
 def _by_load(entry: Fields, kind: Kind, word: str, least: float | None = None) -> dict[str, float]:
-    values = {}
-    for key in kind.load_keys:
-        value = entry.number_or_none(with_word(key, word), least=least)
-        values[load_name(key)] = value or 0.0
-    return values
+    """The loads that are given, by name. One that is left out is nil and need not be computed."""
+    given = [key for key in kind.load_keys if with_word(key, word) in entry]
+    return {load_name(key): entry.number(with_word(key, word), least=least) for key in given}
 
 
 def _check_peak(
@@ -135,13 +135,10 @@ def _check_peak(
     ratio: float | None,
     maxima: dict[str, float] | None,
 ) -> None:
-    for key in kind.load_keys:
-        name = load_name(key)
-        if ranges[name] == 0.0 and with_word(key, "max") not in entry:
-            continue
-        largest = maxima[name] if maxima is not None else ranges[name] / (1.0 - (ratio or 0.0))
+    for name, swing in ranges.items():
+        largest = swing / (1.0 - (ratio or 0.0)) if maxima is None else maxima.get(name, 0.0)
         if largest > peak[name] + PEAK_SLACK * abs(peak[name]):
             raise entry.refuse(
-                with_word(key, "range"),
+                next(with_word(key, "range") for key in kind.load_keys if load_name(key) == name),
                 f"the cycle's maximum of {largest:g} exceeds the peak of {peak[name]:g}.",
             )

@@ -213,16 +213,27 @@ class _Run:
         return np.asarray(np.any(self.p.growing(safe) != growing, axis=(0, 1)))
 
     def _bisect(self, y: Floats, h: Floats, growing: Bools) -> Floats:
-        """The first state at which the run ends or a threshold is crossed, just beyond it."""
-        low, high = np.zeros_like(h), h.copy()
-        best = None
+        """The first state at which the run ends or a threshold is crossed, just beyond it.
+
+        The bracket is cut into several parts at once, each a real step from the same start: a
+        single crack costs as much as a few dozen steps side by side.
+        """
+        samples = h.size
+        parts = max(2, min(32, 256 // samples))
+        low, high = np.zeros(samples), h.copy()
+        many_y, many_growing = np.repeat(y, parts, axis=1), np.repeat(growing, parts, axis=2)
+        share = np.arange(1, parts + 1) / parts
         for _ in range(HALVINGS):
-            middle = 0.5 * (low + high)
-            state, _ = self._step(y, middle, growing)
-            beyond = (self.p.ended(state[:-1]) != RUNNING) | self._flipped(state, growing)
-            low = np.where(beyond, low, middle)
-            high = np.where(beyond, middle, high)
-            best = state if best is None else np.where(beyond, state, best)
+            tried = low[:, None] + (high - low)[:, None] * share
+            tried[:, -1] = high
+            state, _ = self._step(many_y, tried.ravel(), many_growing)
+            beyond = (self.p.ended(state[:-1]) != RUNNING) | self._flipped(state, many_growing)
+            beyond = beyond.reshape(samples, parts)
+            beyond[:, -1] = True
+            first = np.argmax(beyond, axis=1)
+            row = np.arange(samples)
+            low = np.where(first > 0, tried[row, first - 1], low)
+            high = tried[row, first]
             if np.all(high - low <= 1e-10):
                 break
         state, _ = self._step(y, high, growing)

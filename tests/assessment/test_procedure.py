@@ -140,7 +140,7 @@ def test_below_the_threshold_life_is_null_with_a_reason():
 
 def test_restrict_names_a_load_that_restores_the_reserve_and_leaves_time():
     case = surface(
-        loading__peak={"membrane_mpa": 215, "bending_mpa": 0},
+        loading__peak={"membrane_mpa": 260, "bending_mpa": 0},
         loading__cycles__0__membrane_range_mpa=60,
         criteria__load_reserve=1.5,
         owner={"allows_restriction": True},
@@ -164,8 +164,8 @@ def test_restrict_names_a_load_that_restores_the_reserve_and_leaves_time():
 
 def test_a_load_that_the_cycles_reach_cannot_be_restricted():
     case = surface(
-        loading__peak={"membrane_mpa": 215},
-        loading__cycles__0__membrane_range_mpa=193,
+        loading__peak={"membrane_mpa": 260},
+        loading__cycles__0__membrane_range_mpa=233,
         criteria__load_reserve=1.5,
         owner={"allows_restriction": True},
     )
@@ -186,6 +186,86 @@ def test_a_bounding_depth_through_the_wall_is_a_through_crack():
     outcome = assess(surface(crack__depth_mm=15, crack__length_mm=32, crack__sizing__depth_sd_mm=3))
     assert outcome["bounding"]["became_through"]
     assert outcome["bounding"]["kind"] == "plate-through-centre"
+
+
+KINDS = {
+    "plate-through-centre": (
+        {"length_mm": 12},
+        {"width_mm": 200, "thickness_mm": 10},
+        {"membrane": 100},
+    ),
+    "plate-through-edge": (
+        {"length_mm": 6},
+        {"width_mm": 200, "thickness_mm": 10, "ends": "free"},
+        {"membrane": 100, "bending": 10},
+    ),
+    "cylinder-axial-inside": (
+        {"depth_mm": 2, "length_mm": 12},
+        {"inner_radius_mm": 100, "thickness_mm": 12},
+        {"pressure": 8},
+    ),
+    "bar-surface": ({"depth_mm": 3}, {"diameter_mm": 60}, {"membrane": 60, "bending": 60}),
+    "tabulated": (
+        {"depth_mm": 3},
+        {"thickness_mm": 30, "table": [[0, 1.1], [20, 1.6]]},
+        {"membrane": 100},
+    ),
+}
+
+
+@pytest.mark.parametrize("kind", KINDS)
+def test_every_kind_goes_the_whole_way(kind):
+    sizes, body, loads = KINDS[kind]
+    cycles = {f"{name}_range_mpa": 0.5 * value for name, value in loads.items()}
+    case = surface(
+        crack={
+            "kind": kind,
+            **sizes,
+            "sizing": {"method": "ultrasonic", "depth_sd_mm": 0.2, "length_sd_mm": 0.3},
+        },
+        body=body,
+        loading__peak={f"{name}_mpa": value for name, value in loads.items()},
+        loading__cycles=[{**cycles, "stress_ratio": 0.1, "per_usage": 20}],
+    )
+    outcome = assess(case)
+    assert outcome["disposition"]["verdict"] in ("continue", "watch")
+    assert outcome["life"]["usage"] > outcome["bounding"]["life"]["usage"] > 0
+    stop = outcome["stop_size"]
+    for size, value in sizes.items():
+        assert stop[size] > value
+    assert all(math.isfinite(number) for number in numbers_of(outcome))
+
+
+def test_outside_a_published_range_today_refers_and_computes_no_growth():
+    case = surface(
+        crack={"kind": "plate-through-edge", "length_mm": 6, "sizing": "none: cut (invented)"},
+        body={"width_mm": 200, "thickness_mm": 10, "ends": "held"},
+        loading__peak={"membrane_mpa": 100},
+    )
+    outcome = assess(case)
+    assert outcome["disposition"]["verdict"] == "refer"
+    assert "Outside a published range today" in " ".join(outcome["disposition"]["reasons"])
+    assert any("published range" in caution for caution in outcome["cautions"])
+    assert outcome["stress_intensity"][0]["k_mpa_sqrt_m"] > 0
+    assert outcome["bounding"]["life"]["usage"] is None
+    assert outcome["stop_size"]["length_mm"] is None
+
+
+def test_a_pressure_boundary_broken_through_at_its_bounding_size_is_withdrawn():
+    case = surface(
+        crack={
+            "kind": "cylinder-axial-inside",
+            "depth_mm": 11,
+            "length_mm": 40,
+            "sizing": {"method": "ultrasonic", "depth_sd_mm": 0.6, "length_sd_mm": 1},
+        },
+        body={"inner_radius_mm": 100, "thickness_mm": 12},
+        loading__peak={"pressure_mpa": 2},
+        loading__cycles=[{"pressure_range_mpa": 1, "stress_ratio": 0.1, "per_usage": 1}],
+    )
+    outcome = assess(case)
+    assert outcome["disposition"]["verdict"] == "withdraw"
+    assert "broken through" in " ".join(outcome["disposition"]["reasons"])
 
 
 WORSE = {
