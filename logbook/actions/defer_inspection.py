@@ -92,7 +92,7 @@ def approve_deferral(
             new_at=asked.new_at,
             at=clock.now(),
         )
-        record = reserve_number(made)
+        record = reserve_number(deferral=made)
         append(
             APPROVED,
             {

@@ -110,7 +110,7 @@ def _sign(by: Person, review: Review, licence: Licence, meaning: str, digest: st
             signed_at=clock.now(),
             supersedes=standing.latest_disposition(a.location, a.crack),
         )
-        record = reserve_number(made)
+        record = reserve_number(disposition=made)
         append(
             KIND,
             {

@@ -1,7 +1,7 @@
 """Numbers, dates and verdicts in words, one way on every page."""
 
 import datetime
-from decimal import Decimal
+from decimal import ROUND_FLOOR, Decimal
 from zoneinfo import ZoneInfo
 
 from django.utils.formats import date_format
@@ -38,7 +38,8 @@ def number(value: Decimal | float, decimal_sign: str = ".") -> str:
 
 
 def usage(at: Decimal, unit: str, decimal_sign: str) -> str:
-    """14,950 hours."""
+    """14,950 hours. A reading that is reckoned falls back to the whole count before it."""
+    at = at.to_integral_value(ROUND_FLOOR) if at >= 100 else at
     return f"{number(at, decimal_sign)}{NO_BREAK}{counts(unit)}"
 
 

@@ -40,6 +40,12 @@ def num(context: template.Context, value: Decimal | float | None) -> str:
 
 
 @register.simple_tag(takes_context=True)
+def usage(context: template.Context, at: Decimal, unit: str) -> str:
+    """14,950 hours."""
+    return writing.usage(at, unit, context.get("decimal_sign", "."))
+
+
+@register.simple_tag(takes_context=True)
 def mm(context: template.Context, value: Decimal | float | None) -> SafeString:
     """8.4 mm, the unit in Regular."""
     if value is None:
