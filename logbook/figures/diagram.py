@@ -202,6 +202,7 @@ def _put_ray_words(story: DiagramStory, plan: Plan) -> None:
         plan.put(text, [*_around(at, 14), *_around(at, 28)], bold=True)
     if story.asked is not None and _within(view, story.at(story.asked)):
         places = _beside_ray(story, view, story.asked, (20, 28, 36))
+        places += _around(story.at(story.asked), 26)
         plan.put(f"asked for: {story.n(story.asked)}", places)
     if story.ray_start != (0.0, 0.0):
         plan.put("residual stress alone", _around(story.ray_start))
@@ -272,7 +273,8 @@ def _now(story: DiagramStory, view: View) -> list[Chart]:
 
 def _put_now_words(story: DiagramStory, plan: Plan) -> None:
     if _within(plan.view, story.now):
-        plan.put("now, at its worst", _around(story.now, 16), bold=True)
+        places = [*_around(story.now, 16), *_around(story.now, 30)]
+        plan.put("now, at its worst", places, bold=True)
         return
     said = f"load ratio {story.n(story.now[0])}, toughness ratio {story.n(story.now[1])}"
     corner = (plan.view.x[1] - 8 * plan.view.px_x, plan.view.y[1])

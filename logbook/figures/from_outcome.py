@@ -21,6 +21,9 @@ RULE_WORDS = (
     "growth faster than explained",
 )
 
+OUT_OF_RANGE = "out of range"
+# How a part most likely ends, by the cause of an outcome; the end of a range is no end of a part.
+BREAKS = {"fracture": "break", "collapse": "break", "break-through": "break through"}
 # How a kind lies in its wall.
 SHAPES = {
     "plate-through-centre": "through",
@@ -48,7 +51,7 @@ def size_story(
 ) -> SizeStory:
     """of : "depth" or "length", the size that ``looks`` carry.
 
-    next_on, next_usage : what binds, where it differs from what the outcome proposes
+    next_on, next_usage : the look that binds or is proposed, as the book has it
     """
     case, outcome = case or {}, outcome or {}
     start = _number(case.get("usage", {}).get("at"))
@@ -56,9 +59,9 @@ def size_story(
     column = 1 if of == "depth" else 2
     worst = _path(bounding.get("life"), column, start)
     stop = _size(outcome.get("stop_size"), of)
-    limit = worst[-1][1] if worst and _ends_by_failing(bounding["life"]) else stop
-    governing = outcome.get("next_inspection") or {}
-    on, usage = governing.get("on"), _number(governing.get("usage"))
+    limit = _limit(case, outcome, worst, stop, of)
+    critical = outcome.get("critical") or {}
+    how = BREAKS.get(critical.get("cause", "fracture"))
     near, far = ("edge", "far edge") if _shape(case) == "edge" else ("this side", "far side")
     return SizeStory(
         what=what,
@@ -72,10 +75,11 @@ def size_story(
         worst=worst,
         likely=_path(outcome.get("life"), column, start),
         limit_mm=limit,
-        breaks_mm=_size(outcome.get("critical"), of),
+        breaks_mm=None if how is None else _size(critical, of),
+        breaks_how=how or "break",
         stop_mm=stop,
-        next_usage=next_usage if next_usage is not None else usage,
-        next_on=next_on or (date.fromisoformat(on) if on else None),
+        next_usage=next_usage,
+        next_on=next_on,
         signed=signed,
         rules=rule_marks(case, outcome),
         no_growth_why="" if worst else no_growth_why,
@@ -170,9 +174,28 @@ def _path(life: Document | None, column: int, start: float | None) -> tuple[Poin
     return tuple((start + float(row[0]), float(row[column])) for row in rows)
 
 
-def _ends_by_failing(life: Document) -> bool:
-    """A path that ends for another reason ends at a size that still holds."""
-    return life.get("usage") is not None and life.get("ends_by") != "out of range"
+def _limit(
+    case: Document, outcome: Document, worst: Sequence[Point], stop: float | None, of: str
+) -> float | None:
+    """The size from which the part must be taken as able to break.
+
+    Where growth at its worst ends because the reserve is used up, it is the size at that end; else
+    the stop size, which lies where the reserve is used up too. None where relations end before
+    that: a path or a stop at the end of a range says nothing of strength.
+    """
+    bounding = outcome.get("bounding") or {}
+    life = bounding.get("life") or {}
+    if life.get("ends_by") == OUT_OF_RANGE:
+        return None
+    if worst and life.get("usage") is not None:
+        return worst[-1][1]
+    size, failure = _size(case.get("crack"), of), bounding.get("failure") or {}
+    reserve = _number(failure.get("reserve_on_load"))
+    asked = _number(case.get("criteria", {}).get("load_reserve"))
+    enough = reserve is not None and asked is not None and reserve >= asked
+    if enough and size is not None and stop is not None and size >= stop:
+        return None
+    return stop
 
 
 def _size(sizes: Document | None, of: str) -> float | None:

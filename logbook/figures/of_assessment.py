@@ -2,9 +2,11 @@
 
 import json
 from collections.abc import Iterable, Mapping
+from datetime import date
+from decimal import Decimal
 from typing import Any
 
-from logbook.models import Assessment, Crack, Disposition, Finding, Measurement
+from logbook.models import Assessment, Crack, Disposition, Finding, Measurement, Verdict
 
 from .diagram import diagram_figure
 from .drawing import Figure
@@ -39,7 +41,7 @@ def figures_of(
     if measured:
         of = drawn_size(measured)
         sizing = _sizing(assessment)
-        until_at = binding.until_at if binding is not None else None
+        until_on, until_at = _next_look(binding)
         story = size_story(
             what=what,
             counter=counts(component.counter_unit),
@@ -49,7 +51,7 @@ def figures_of(
             case=case,
             outcome=outcome,
             signed=disposition is not None,
-            next_on=binding.until_on if binding is not None else None,
+            next_on=until_on,
             next_usage=None if until_at is None else float(until_at),
             no_growth_why="No growth is reckoned here; the reasons say why.",
             decimal_sign=decimal_sign,
@@ -61,6 +63,15 @@ def figures_of(
         figures += [diagram_figure(diagram)] if diagram else []
         figures += [section_figure(section)] if section else []
     return tuple(figures)
+
+
+def _next_look(
+    binding: Assessment | Disposition | None,
+) -> tuple[date | None, Decimal | None]:
+    """A part that is out of use waits for a decision, not for a look."""
+    if binding is None or binding.verdict in (Verdict.REFER, Verdict.WITHDRAW):
+        return None, None
+    return binding.until_on, binding.until_at
 
 
 def measurements(crack: Crack, *, up_to: int | None = None) -> list[Measurement]:

@@ -2,6 +2,7 @@
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 
 from . import ink
 from .drawing import Chart
@@ -55,7 +56,7 @@ class Plan:
     def take_line(self, points: Iterable[Point], reach: float = 3) -> None:
         """A line by the points along it, six px apart at most."""
         spots = [self.px(point) for point in points]
-        for (x1, y1), (x2, y2) in zip(spots, spots[1:], strict=False):
+        for (x1, y1), (x2, y2) in pairwise(spots):
             parts = max(1, round(max(abs(x2 - x1), abs(y2 - y1)) / 6))
             for n in range(parts + 1):
                 x, y = x1 + (x2 - x1) * n / parts, y1 + (y2 - y1) * n / parts

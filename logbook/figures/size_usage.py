@@ -7,6 +7,8 @@ Counter below, dates above. Nothing in it is computed here but where things stan
 from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date, timedelta
+from itertools import pairwise
+from math import floor
 
 from . import ink
 from .drawing import Chart, Figure, Table, draw
@@ -75,7 +77,8 @@ class SizeStory:
     counter : what is counted, e.g. "lifts"; per_day : for dates beyond those known
     wall_mm : from this side to the far side, None where not known
     worst, likely : (usage, mm) from the last look on; empty where nothing can be reckoned
-    limit_mm : from here on it must be taken as able to break; breaks_mm : most likely breaks
+    limit_mm : from here on it must be taken as able to break; breaks_mm : most likely breaks, or
+    breaks through (breaks_how)
     stop_mm : a size found at or beyond this stops the use; sure_mm : the smallest crack that the
     method is sure to find
     next_look : (usage or None, date or None); signed : by a licensed hand
@@ -94,6 +97,7 @@ class SizeStory:
     likely: tuple[Point, ...] = ()
     limit_mm: float | None = None
     breaks_mm: float | None = None
+    breaks_how: str = "break"
     stop_mm: float | None = None
     sure_mm: float | None = None
     next_usage: float | None = None
@@ -108,8 +112,10 @@ class SizeStory:
         return millimetres(value, self.decimal_sign)
 
     def count(self, value: float) -> str:
-        whole = abs(value - round(value)) < 0.05
-        return f"{number(value, 0 if whole else 1, self.decimal_sign)} {self.counter}"
+        """Rounded down, so that a limit is never said to be later than it is."""
+        small = abs(value) < 1000 and not float(value).is_integer()
+        down = floor(value * 10) / 10 if small else floor(value)
+        return f"{number(down, 1 if small else 0, self.decimal_sign)} {self.counter}"
 
 
 def size_figure(story: SizeStory, *, name: str = "size") -> Figure:
@@ -168,7 +174,7 @@ def table(story: SizeStory) -> Table:
     if story.limit_mm is not None:
         notes.append(f"Must be taken as able to break from {story.mm(story.limit_mm)}.")
     if story.breaks_mm is not None:
-        notes.append(f"Would most likely break at {story.mm(story.breaks_mm)}.")
+        notes.append(f"Would most likely {story.breaks_how} at {story.mm(story.breaks_mm)}.")
     if story.stop_mm is not None:
         notes.append(f"Stop when {story.mm(story.stop_mm)} or more is found.")
     if story.sure_mm is not None:
@@ -190,18 +196,32 @@ def table(story: SizeStory) -> Table:
     return Table(headings, tuple(rows), tuple(notes))
 
 
+def place_of(story: SizeStory, usage: float | None, on: date | None) -> float | None:
+    """The counter reading of what comes first, a count or a day; None where neither is known.
+
+    A day becomes a reading by ``per_day`` from the last look on, as the dates above the picture do.
+    """
+    places = [] if usage is None else [usage]
+    if on is not None and story.per_day:
+        last = max(story.looks, key=lambda look: (look.on, look.usage))
+        places.append(last.usage + story.per_day * (on - last.on).days)
+    return min(places, default=None)
+
+
 # --- how far the picture reaches ---------------------------------------------------------------
 
 
 def _usage_reach(story: SizeStory) -> Point:
     seen = [look.usage for look in story.looks]
     low, last = min(seen), max(seen)
-    ahead = [story.next_usage] if story.next_usage is not None else []
-    ahead += [points[-1][0] for points in (story.worst,) if points]
-    ahead += [rule.usage for rule in story.rules if rule.usage is not None]
+    due = place_of(story, story.next_usage, story.next_on)
+    ahead = [points[-1][0] for points in (story.worst,) if points]
+    ahead += [
+        at for rule in story.rules if (at := place_of(story, rule.usage, rule.on)) is not None
+    ]
     # Far growth must not squeeze what was seen into a corner: five times its span at most, but
     # always past the next look.
-    least = max([last, *([story.next_usage] if story.next_usage is not None else [])])
+    least = last if due is None else max(last, due)
     span = max(least - low, abs(last) * 0.02, 1.0)
     far = max([last, *ahead])
     high = max(least, min(far, low + 5 * span))
@@ -311,12 +331,11 @@ def _take_what_is_drawn(story: SizeStory, plan: Plan) -> None:
     for level in (story.limit_mm, story.breaks_mm, story.sure_mm):
         if level is not None:
             plan.take_line([(view.x[0], level), (view.x[1], level)])
-    if story.next_usage is not None:
-        plan.take_line([(story.next_usage, view.y[0]), (story.next_usage, view.y[1])])
-    for rule in story.rules:
-        if rule.usage is not None:
-            foot = (rule.usage, view.y[0])
-            plan.take_line([foot, (rule.usage, view.y[0] + _tick(rule) * view.px_y)])
+    due = place_of(story, story.next_usage, story.next_on)
+    if due is not None:
+        plan.take_line([(due, view.y[0]), (due, view.y[1])])
+    for at, rule in _rules_in(story, view):
+        plan.take_line([(at, view.y[0]), (at, view.y[0] + _tick(rule) * view.px_y)])
 
 
 def _tick(rule: RuleMark) -> float:
@@ -339,7 +358,7 @@ def _size_axis(story: SizeStory) -> Chart:
     return {
         "orient": "left",
         "title": None,
-        "format": "~g",
+        "format": ",~f",
         "tickCount": 6,
     }
 
@@ -387,7 +406,7 @@ def _date_ticks(story: SizeStory, view: View) -> list[tuple[float, str]]:
 
 
 def _usage_on(known: Sequence[tuple[float, date]], on: date) -> float:
-    for (usage1, on1), (usage2, on2) in zip(known, known[1:], strict=False):
+    for (usage1, on1), (usage2, on2) in pairwise(known):
         if on1 <= on <= on2:
             return usage1 + (usage2 - usage1) * (on - on1).days / (on2 - on1).days
     raise ValueError(f"{on} lies outside the days known")
@@ -416,9 +435,9 @@ def _hatch(story: SizeStory, view: View) -> list[Chart]:
 
 
 def _next_look(story: SizeStory, view: View) -> list[Chart]:
-    if story.next_usage is None or not view.x[0] <= story.next_usage <= view.x[1]:
+    at = place_of(story, story.next_usage, story.next_on)
+    if at is None or not view.x[0] <= at <= view.x[1]:
         return []
-    at = story.next_usage
     low, high = (at, view.y[0]), (at, view.y[1])
     if not story.signed:
         return [segments(view, [(low, high)], ink.INK, 1.5)]
@@ -429,11 +448,8 @@ def _next_look(story: SizeStory, view: View) -> list[Chart]:
 
 def _rules_in(story: SizeStory, view: View) -> list[tuple[float, RuleMark]]:
     """Rules with a place on the axis of this picture, from left to right."""
-    within = [
-        (rule.usage, rule)
-        for rule in story.rules
-        if rule.usage is not None and view.x[0] <= rule.usage <= view.x[1]
-    ]
+    placed = [(place_of(story, rule.usage, rule.on), rule) for rule in story.rules]
+    within = [(at, rule) for at, rule in placed if at is not None and view.x[0] <= at <= view.x[1]]
     return sorted(within, key=lambda one: (one[0], one[1].rule))
 
 
@@ -542,7 +558,7 @@ def _put_level_words(story: SizeStory, plan: Plan) -> None:
         plan.put(said, [top], bold=True)
     levels = [
         (story.limit_mm, "must be taken as able to break from {}", True),
-        (story.breaks_mm, "would most likely break at {}", False),
+        (story.breaks_mm, f"would most likely {story.breaks_how} at {{}}", False),
         (story.sure_mm, "smallest crack this method is sure to find", False),
     ]
     for mm, text, bold in levels:
@@ -552,43 +568,68 @@ def _put_level_words(story: SizeStory, plan: Plan) -> None:
 
 def _put_growth_words(story: SizeStory, plan: Plan) -> None:
     view = plan.view
-    if story.next_usage is not None and view.x[0] <= story.next_usage <= view.x[1]:
+    due = place_of(story, story.next_usage, story.next_on)
+    if due is not None and view.x[0] <= due <= view.x[1]:
         said = ["next look" if story.signed else "next look, proposed"]
         said += [] if story.next_on is None else [day(story.next_on)]
-        said += [story.count(story.next_usage)]
+        if story.next_usage is not None:
+            said.append(f"{'' if story.next_on is None else 'or '}{story.count(story.next_usage)}")
         heights = [part * view.y[1] for part in (0.3, 0.2, 0.4, 0.5, 0.6)]
         places = [
-            Place((story.next_usage, y), align, dx)
+            Place((due, y), align, dx)
             for align, dx in (("right", -10), ("left", 10))
             for y in heights
         ]
         plan.put(said, places)
-    for points, text in (
-        (story.worst, "growth at its worst"),
-        (story.likely, "most likely"),
+    for points, text, above in (
+        (story.worst, "growth at its worst", True),
+        (story.likely, "most likely", False),
     ):
-        shown = [point for point in points if point[0] <= view.x[1] and point[1] <= view.y[1]]
+        shown = _within(view, points)
         if len(shown) > 1:
-            plan.put(text, _path_places(shown))
+            plan.put(text, _path_places(shown, above))
     for one in story.bands:
         usage, _, high = one.edges[-1]
         plan.put(one.label, [Place((min(usage, view.x[1]), high), "right", -8, -12)])
 
 
-def _path_places(points: Sequence[Point]) -> list[Place]:
-    """Above to the left or below to the right of a rising line, nearest its middle first."""
+def _within(view: View, points: Sequence[Point]) -> list[Point]:
+    """The part of a path that the picture shows, cut at its right edge and top."""
+    kept: list[Point] = []
+    for x, y in points:
+        if x > view.x[1] or y > view.y[1]:
+            if kept:
+                (x0, y0) = kept[-1]
+                part = min(
+                    (view.x[1] - x0) / (x - x0) if x > x0 else 1.0,
+                    (view.y[1] - y0) / (y - y0) if y > y0 else 1.0,
+                )
+                kept.append((x0 + part * (x - x0), y0 + part * (y - y0)))
+            break
+        kept.append((x, y))
+    return kept
+
+
+def _path_places(points: Sequence[Point], above: bool) -> list[Place]:
+    """Beside a rising line, nearest its middle first: above it, or below."""
     places = []
-    for part in (0.6, 0.7, 0.5, 0.8, 0.4, 0.9, 0.3):
-        reach = points[0][0] + part * (points[-1][0] - points[0][0])
-        at = min(points, key=lambda point: abs(point[0] - reach))
-        places += [
-            Place(at, "right", -10, -12),
-            Place(at, "left", 10, 14),
-            Place(at, "left", -20, 30),
-            Place(at, "right", 40, 34),
-            Place(at, "center", 0, -30),
-        ]
+    for part in (0.6, 0.7, 0.5, 0.8, 0.4, 0.9, 0.3, 1.0, 0.2):
+        at = _along(points, part)
+        if above:
+            sides = [("right", -10, -12), ("center", 0, -18), ("right", 0, -16), ("left", 0, -30)]
+        else:
+            sides = [("left", 10, 14), ("center", 0, 18), ("right", 0, 16), ("right", 40, 34)]
+        places += [Place(at, align, dx, dy) for align, dx, dy in sides]
     return places
+
+
+def _along(points: Sequence[Point], part: float) -> Point:
+    """The point of a path at a part of its reach across."""
+    reach = points[0][0] + part * (points[-1][0] - points[0][0])
+    for (x1, y1), (x2, y2) in pairwise(points):
+        if x1 <= reach <= x2 and x2 > x1:
+            return (reach, y1 + (y2 - y1) * (reach - x1) / (x2 - x1))
+    return points[-1]
 
 
 # --- below the picture -------------------------------------------------------------------------
@@ -634,7 +675,7 @@ def _legend_lines(story: SizeStory) -> list[list[tuple[str, str]]]:
     if without:
         samples.append(("", f"{without} without a {story.of}: see the table"))
     lines = _wrapped(samples)
-    shown = [rule for rule in story.rules if rule.usage is not None]
+    shown = [rule for rule in story.rules if rule.usage is not None or rule.on is not None]
     if shown:
         names = [
             ("", f"{rule.rule} {rule.name}{', governs' if rule.governs else ''}") for rule in shown

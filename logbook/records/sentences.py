@@ -29,8 +29,10 @@ def until(
 
 
 def count(value: Decimal, unit: str, decimal_sign: str = ".") -> str:
-    """14,950 hours; decimals only where there are some."""
-    decimals = 0 if value == value.to_integral_value() else 1
+    """14,950 hours; 12.5 hours: all the digits that were signed."""
+    exact = value.normalize()
+    exponent = exact.as_tuple().exponent
+    decimals = -exponent if isinstance(exponent, int) and exponent < 0 else 0
     return f"{number(float(value), decimals, decimal_sign)}\N{NO-BREAK SPACE}{counts(unit)}"
 
 

@@ -42,12 +42,32 @@ def test_a_length_is_drawn_from_its_own_column():
     assert made.wall_mm is None
 
 
-def test_a_path_that_ends_where_it_still_holds_is_no_limit():
+def test_a_path_that_ends_where_a_relation_ends_is_no_limit():
     outcome = deepcopy(OUTCOME)
     outcome["bounding"]["life"] |= {"ends_by": "out of range"}
+    outcome["stop_size"] = {"depth_mm": 0.0001, "length_mm": 0.0003}
+    made = story(outcome=outcome)
+    assert made.limit_mm is None and made.worst
+    assert "from which it may break" not in size_figure(made).title
+
+
+def test_without_growth_the_limit_is_where_the_reserve_is_used_up():
+    outcome = deepcopy(OUTCOME)
+    outcome["bounding"]["life"] |= {"usage": None, "ends_by": None, "path": []}
     assert story(outcome=outcome).limit_mm == 16.0
-    outcome["bounding"]["life"] |= {"usage": None, "ends_by": None}
-    assert story(outcome=outcome).limit_mm == 16.0
+    # A stop below a crack that holds with reserve comes from a range that ends, not from strength.
+    outcome["stop_size"] = {"depth_mm": 2.0, "length_mm": 6.0}
+    assert story(outcome=outcome).limit_mm is None
+    outcome["bounding"]["failure"]["reserve_on_load"] = 1.1
+    assert story(outcome=outcome).limit_mm == 2.0
+
+
+def test_the_end_of_a_range_is_no_end_of_the_part():
+    outcome = deepcopy(OUTCOME)
+    outcome["critical"]["cause"] = "out of range"
+    assert story(outcome=outcome).breaks_mm is None
+    outcome["critical"]["cause"] = "break-through"
+    assert story(outcome=outcome).breaks_how == "break through"
 
 
 def test_five_rules_with_the_governing_one():

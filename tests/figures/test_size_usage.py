@@ -7,7 +7,7 @@ from datetime import date
 import pytest
 
 from logbook.figures import ink
-from logbook.figures.size_usage import Look, SizeStory, size_figure, table, title
+from logbook.figures.size_usage import Look, SizeStory, place_of, size_figure, table, title
 from tests.figures.reading import axis_values, parsed, placed, scale, texts
 from tests.figures.stories import LOOKS, STORY
 
@@ -20,6 +20,12 @@ def test_the_title_is_a_sentence_with_the_answer():
         "Crack 2 was 8.4 mm deep on 4 May 2026; from 19.0 mm it must be taken as able to break."
         " Next look by 14 Dec 2026 or 14,400 lifts."
     )
+
+
+def test_a_counter_is_never_said_to_be_later_than_it_is():
+    assert STORY.count(54861.987) == "54,861 lifts"
+    assert STORY.count(12.58) == "12.5 lifts"
+    assert STORY.count(120.0) == "120 lifts"
 
 
 def test_a_struck_size_never_is_the_answer():
@@ -127,6 +133,27 @@ def test_only_lengths_and_no_reckoning_draws_every_reading():
 )
 def test_what_is_not_known_draws_too(story):
     parsed(size_figure(story).page_svg)
+
+
+def test_the_next_look_stands_at_what_comes_first_a_day_or_a_count():
+    # 8 lifts a day from 12,600 on 4 May 2026: 14 Dec 2026 is 224 days on.
+    assert place_of(STORY, 20000.0, date(2026, 12, 14)) == 12600 + 8 * 224
+    assert place_of(STORY, 13000.0, date(2026, 12, 14)) == 13000
+    assert place_of(replace(STORY, per_day=None), None, date(2026, 12, 14)) is None
+
+
+def test_growth_that_goes_on_for_ages_does_not_squeeze_what_was_seen():
+    worst = tuple((12600.0 + 1e5 * n, 9.6 + 0.1 * n) for n in range(50))
+    svg = size_figure(replace(STORY, worst=worst, likely=())).print_svg
+    assert "growth at its worst" in texts(svg)
+    assert max(value for value, _, _ in axis_values(svg)) < 100_000
+
+
+def test_what_most_likely_ends_it_is_named():
+    through = replace(STORY, breaks_how="break through")
+    assert "would most likely break through at 20.8\N{NO-BREAK SPACE}mm" in texts(
+        size_figure(through).page_svg
+    )
 
 
 def test_nothing_at_all_is_refused():
