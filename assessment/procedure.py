@@ -6,6 +6,8 @@ Each step is computed as far as it can be; what cannot is a reason, never a gues
 from dataclasses import dataclass, replace
 from typing import Any
 
+import numpy as np
+
 from assessment.bounding import Bounding, bounding
 from assessment.corners import corners, in_mm, sizes_to_corner
 from assessment.document import Case, CaseRefused, read_case
@@ -69,7 +71,9 @@ def assess(document: str | bytes | dict[str, Any]) -> dict[str, Any]:
     from assessment.outcome import outcome_of
 
     case = read_case(document)
-    outcome: dict[str, Any] = settled(outcome_of(case, compute(case)))
+    # What is not finite is data here: it becomes null with a reason, or the end of a range.
+    with np.errstate(all="ignore"):
+        outcome: dict[str, Any] = settled(outcome_of(case, compute(case)))
     return outcome
 
 

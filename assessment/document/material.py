@@ -42,6 +42,9 @@ _GROWTH_KEYS = {
         "peak_over_flow_stress",
     ),
 }
+# Exponents of metals lie between about 2 and 10; far above, the decimal has slipped. Common
+# practice, no source.
+LARGEST_EXPONENT = 20.0
 _THRESHOLD = "threshold_mpa_sqrt_m"
 
 
@@ -125,16 +128,20 @@ def read_growth(where: str, value: Any) -> GrowthLaw:
     def above_nil(key: str) -> float:
         return fields.number(key, above=0.0)
 
+    def exponent(key: str) -> float:
+        return fields.number(key, above=0.0, most=LARGEST_EXPONENT)
+
     if name == "paris":
-        return Paris(above_nil("c"), above_nil("m"), threshold)
+        return Paris(above_nil("c"), exponent("m"), threshold)
     if name == "two-stage":
-        c1, m1, c2, m2 = (above_nil(key) for key in _GROWTH_KEYS[name])
+        c1, c2 = above_nil("c1"), above_nil("c2")
+        m1, m2 = exponent("m1"), exponent("m2")
         if m1 == m2:
             raise fields.refuse("m2", "the two lines are parallel and do not cross.")
         return TwoStage(c1, m1, c2, m2, threshold)
     if name == "walker":
         gamma = fields.number("gamma", least=0.0, most=1.0)
-        return Walker(above_nil("c"), above_nil("m"), gamma, threshold)
+        return Walker(above_nil("c"), exponent("m"), gamma, threshold)
     raise NotComputed(fields.path("law"), f"growth by {name!r} is not computed yet.")
 
 

@@ -219,7 +219,7 @@ class _Run:
         single crack costs as much as a few dozen steps side by side.
         """
         samples = h.size
-        parts = max(2, min(32, 256 // samples))
+        parts = max(2, min(32, 2048 // (samples * growing.shape[0])))
         low, high = np.zeros(samples), h.copy()
         many_y, many_growing = np.repeat(y, parts, axis=1), np.repeat(growing, parts, axis=2)
         share = np.arange(1, parts + 1) / parts

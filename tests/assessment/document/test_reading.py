@@ -105,6 +105,7 @@ def test_deeper_than_twelve_levels_is_refused():
         ),
         ({"material__growth": {"law": "forman", "c": 1, "m": 3}}, "material.growth.law"),
         ({"material__growth__c": -1}, "material.growth.c"),
+        ({"material__growth__m": 30}, "material.growth.m"),
         ({"material__bounding__growth__m": -1}, "material.bounding.growth.m"),
         ({"loading__peak": {}}, "loading.peak"),
         ({"loading__peak": {"profile": [[0, 1], [1, 2]]}}, "loading.peak.profile"),
