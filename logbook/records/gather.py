@@ -1,7 +1,7 @@
 """From the book's rows to what a record says. Reads only; every lookup of a record is here."""
 
 import json
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from pathlib import Path
 from typing import Any
 
@@ -43,6 +43,7 @@ from .content import (
 from .sentences import CAUTION, count, held, moment, sentence, until
 
 PHOTOS_SHOWN = 4
+SHORT_SOURCE = 48
 SIGHTINGS_SHOWN = 24
 
 
@@ -169,7 +170,7 @@ def _content(
         else "Nothing could be reckoned; the reasons say what is missing.",
         rules=_rules(case, outcome, _unit(disposition)),
         inputs=case_lines(case, _sources(assessment)),
-        steps=tuple(_step(one) for one in outcome.get("working", ())),
+        steps=working_steps(outcome.get("working", ())),
         cautions=tuple(outcome.get("cautions", ())),
         attachments=_attachments(assessment),
     )
@@ -404,16 +405,38 @@ def _rules(case: Mapping[str, Any], outcome: Mapping[str, Any], unit: str) -> Ta
     return Table(("rule", "date", f"counter, {unit}", "why not"), rows)
 
 
-def _step(one: Mapping[str, Any]) -> Step:
-    value = one.get("value")
+def working_steps(working: Iterable[Mapping[str, Any]]) -> tuple[Step, ...]:
+    """The working as it is printed. A long source is printed once and then named by its number."""
+    numbers: dict[str, int] = {}
+    return tuple(_step(one, numbers) for one in working)
+
+
+def _step(one: Mapping[str, Any], numbers: dict[str, int]) -> Step:
     return Step(
         step=str(one.get("step", "")),
         formula=str(one.get("formula") or ""),
         numbers=str(one.get("with") or ""),
-        value=f"{value:.4g}" if isinstance(value, float) else str("" if value is None else value),
+        value=_value(one.get("value")),
         unit=str(one.get("unit") or ""),
-        source=str(one.get("source") or ""),
+        source=_source(str(one.get("source") or ""), numbers),
     )
+
+
+def _source(source: str, numbers: dict[str, int]) -> str:
+    if len(source) <= SHORT_SOURCE:
+        return source
+    if source in numbers:
+        return f"source {numbers[source]}, above"
+    numbers[source] = len(numbers) + 1
+    return f"{numbers[source]}: {source}"
+
+
+def _value(value: Any) -> str:
+    """Four figures; counts from ten thousand on in full, never with an exponent."""
+    if isinstance(value, float):
+        large = 1e4 <= abs(value) < 1e12
+        return f"{value:,.1f}".removesuffix(".0") if large else f"{value:.4g}"
+    return "" if value is None else str(value)
 
 
 def _attachments(assessment: Assessment) -> tuple[Attachment, ...]:

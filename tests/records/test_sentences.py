@@ -5,6 +5,7 @@ from decimal import Decimal
 
 import pytest
 
+from logbook.records.gather import working_steps
 from logbook.records.sentences import CAUTION, count, held, moment, sentence, until
 
 FORBIDDEN = ("disposition", "bounding", "basis", "criteria", "case", "outcome")
@@ -66,3 +67,18 @@ def test_until_takes_what_there_is():
 def test_a_time_has_its_offset():
     at = datetime(2026, 5, 5, 14, 20, tzinfo=UTC)
     assert moment(at, "Europe/Berlin").replace("\xa0", " ") == "5 May 2026, 16:20 +02:00"
+
+
+def test_a_long_source_is_printed_once_and_then_named_by_its_number():
+    long, other = "A. Author, a paper with a long title, a journal, 1981", "B. Author, " * 8
+    working = [
+        {"step": "K", "value": 13.3612, "source": long},
+        {"step": "again", "value": 84523.9, "source": long},
+        {"step": "other", "value": "2027-06-08", "source": other},
+        {"step": "short", "value": None, "source": "definition"},
+    ]
+    steps = working_steps(working)
+    assert [one.source for one in steps] == [
+        f"1: {long}", "source 1, above", f"2: {other}", "definition",
+    ]  # fmt: skip
+    assert [one.value for one in steps] == ["13.36", "84,523.9", "2027-06-08", ""]
