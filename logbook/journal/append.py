@@ -26,7 +26,9 @@ def append(
     because_of: Iterable[uuid.UUID] = (),
     names: Mapping[str, str] | None = None,
 ) -> Leaf:
-    """Append one act. Must be the last write of an atomic block: it locks the head till commit.
+    """Append one act, after its rows are written: it locks the head till commit.
+
+    Only projections are refreshed after it, since they order what they find by leaf.
 
     The leaf also holds a digest of every row that carries the act (see rows.py).
 

@@ -202,7 +202,7 @@ def _records() -> Iterator[Fault | None]:
 def record_path(record: Record) -> Path:
     """Where the stored bytes of a record lie."""
     folder = Path(settings.DATA_DIR) / "records"
-    return folder / f"{record.number:06d}-{record.sha256[:12]}.pdf"
+    return folder / f"{record.number}-{record.sha256[:12]}.pdf"
 
 
 def _file(where: str, path: Path, sha256: str) -> Fault | None:
