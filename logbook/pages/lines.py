@@ -143,9 +143,7 @@ def verdict_sentence(verdict: str, until: str, limit: str, name: str, phone: str
             else _("May stay in use. Look again early.")
         )
     if verdict == Verdict.RESTRICT:
-        said = (
-            _("May be used only up to %(limit)s.") if limit else _("May be used only as limited.")
-        ) % words
+        said = _("May be used only so: %(limit)s.") % {"limit": limit.rstrip(". ")}
         return said + (" " + _("Look again by %(until)s.") % words if until else "")
     if verdict == Verdict.REPAIR:
         return (

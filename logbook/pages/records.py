@@ -6,7 +6,7 @@ from django.http import HttpResponse
 from django.shortcuts import render
 
 from logbook import access
-from logbook.models import Record
+from logbook.models import Disposition, Record
 from logbook.records.issue import stored_bytes
 
 from .asked import Asked
@@ -38,9 +38,15 @@ def records(request: Asked) -> HttpResponse:
         {
             "tab": "records",
             "leaf": leaf,
+            "rows": [(one, _signed(one)) for one in leaf.object_list],
             "foot_zone": sites[0].time_zone if sites else "UTC",
         },
     )
+
+
+def _signed(one: Record) -> Disposition | None:
+    """What the record is of: the signed verdict, or the one whose look was put off."""
+    return one.deferral.disposition if one.deferral is not None else one.disposition
 
 
 @login_required

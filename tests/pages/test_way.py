@@ -107,6 +107,8 @@ def test_from_the_find_to_the_record(book: Book, as_: Any):
     record = Record.objects.get()
     pdf = as_("auditor").get(f"/records/{record.number}/")
     assert pdf.content.startswith(b"%PDF")
+    listed = words(as_("auditor").get("/records/").content)
+    assert "Heel post, upper weld" in listed
     trace = words(as_("auditor").get(f"/crack/{made.crack_id}/trace/").content)
     for said in ("4.4 mm deep", "proposed “continue”", "review: accepted", "signed “continue”"):
         assert said in trace
