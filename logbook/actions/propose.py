@@ -8,6 +8,7 @@ part counts as not assessed, and the sweep asks again.
 import datetime
 import json
 import logging
+import math
 import uuid
 from dataclasses import dataclass
 from decimal import ROUND_FLOOR, Decimal
@@ -126,8 +127,12 @@ def _counter(value: float | None) -> Decimal | None:
 
 
 def _limit(outcome: dict[str, Any]) -> str:
-    restriction = outcome.get("restriction") or {}
-    return str(restriction.get("words") or restriction.get("limit") or "")
+    """The limit in words that a crew member reads; rounded down."""
+    restriction = outcome.get("restriction")
+    if not restriction:
+        return ""
+    percent = math.floor(restriction["factor"] * 100)
+    return f"{percent} % of the largest load"
 
 
 def _write(

@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from decimal import Decimal
 from typing import Any
 
+import assessment
 from logbook import clock
 from logbook.cases import rows, text
 from logbook.models import (
@@ -25,8 +26,6 @@ from logbook.models import (
 
 # A crack whose depth nobody knows is taken to go through, in the kind that says so.
 THROUGH_OF = {"plate-surface": "plate-through-centre"}
-NO_DEPTH = frozenset({"plate-through-centre", "plate-through-edge"})
-NO_LENGTH = frozenset({"tabulated"})
 
 
 @dataclass(frozen=True)
@@ -49,7 +48,7 @@ def freeze(location: Location, crack: Crack | None) -> FrozenCase:
     if look is None:
         return _none(basis, "Nobody has looked here yet.")
     try:
-        part = _found(body, crack, look) if crack is not None else _not_found(body)
+        part = _found(body, crack, look) if crack is not None else _not_found(body, look)
     except _NoCase as why:
         return _none(basis, str(why))
     case = _case(body, part, location, crack, look)
@@ -91,7 +90,7 @@ def _case(
         "crack": part["crack"],
         "body": body.get("body", {}),
         "material": body.get("material", {}),
-        "loading": body.get("loading", {}),
+        "loading": _loading(body, part["crack"]["kind"]),
         "usage": {
             "unit": component.counter_unit,
             "per_day": component.per_day,
@@ -121,6 +120,11 @@ def _case(
     return case
 
 
+def _loading(body: dict[str, Any], kind: str) -> dict[str, Any]:
+    loading: dict[str, Any] = body.get("loading", {})
+    return _through_loading(loading) if kind != body["kind"] else loading
+
+
 def _as_of(location: Location, inspection: Inspection) -> dict[str, Any]:
     """Today and the newest reading: past the date in force, the answer is another."""
     today = clock.today(location.component.site.time_zone)
@@ -135,7 +139,7 @@ def _without_source(section: dict[str, Any]) -> dict[str, Any]:
 
 def _found(body: dict[str, Any], crack: Crack, look: Finding) -> dict[str, Any]:
     if look.what == What.KNOWN_NOT_SEEN:
-        return {"crack": _not_found(body)["crack"] | {"on_record": True}}
+        return {"crack": _not_found(body, look)["crack"] | {"on_record": True}}
     sizes = rows.measurements(crack)
     if not sizes:
         start = rows.new_start(crack)
@@ -152,60 +156,85 @@ def _found(body: dict[str, Any], crack: Crack, look: Finding) -> dict[str, Any]:
 
 
 def _crack(body: dict[str, Any], m: Measurement) -> dict[str, Any]:
-    kind = body["kind"]
-    made: dict[str, Any] = {"kind": kind, "found": True}
-    sizing = body.get("sizing", {}).get(m.finding.inspection.method)
-    if sizing is not None:
-        made["sizing"] = _sizing(sizing, m.finding.inspection.method)
-    if m.why_smaller:
-        made["why_smaller"] = m.why_smaller
-    made |= _depth(body, kind, m)
-    if kind not in NO_LENGTH:
+    kind = _kind_of(body, m)
+    made: dict[str, Any] = {"kind": kind.name, "found": True}
+    if "depth_mm" in kind.sizes:
+        made |= _depth(body, m)
+    if "length_mm" in kind.sizes:
         if m.length_mm is None:
             raise _NoCase("The length of the crack was not measured.")
         made["length_mm"] = m.length_mm
-    if kind in NO_DEPTH or made["kind"] in NO_DEPTH:
-        made.pop("depth_mm", None)
-        made.pop("depth_basis", None)
-        made.pop("depth_source", None)
-        _drop_depth_sizing(made)
+    elif "length_mm" in kind.optional_sizes and m.length_mm is not None:
+        made["length_mm"] = m.length_mm
+    sizing = _sizing_for(body, m.finding.inspection.method, kind)
+    if sizing is not None:
+        made["sizing"] = sizing
+    if m.why_smaller:
+        made["why_smaller"] = m.why_smaller
     return made
 
 
-def _drop_depth_sizing(made: dict[str, Any]) -> None:
-    if isinstance(made.get("sizing"), dict):
-        made["sizing"] = {
-            key: value for key, value in made["sizing"].items() if not key.startswith("depth_")
-        }
+def _kind_of(body: dict[str, Any], m: Measurement) -> assessment.Kind:
+    """The kind of the basis; where nobody knows the depth and nothing is assumed, the through
+    crack of that length."""
+    kind = assessment.KINDS[body["kind"]]
+    unknown = m.depth_basis == DepthBasis.NOT_MEASURED and "depth_mm" in kind.sizes
+    if unknown and (body.get("depth_ratio") is None or m.length_mm is None):
+        through = THROUGH_OF.get(kind.name)
+        if through is None:
+            raise _NoCase(
+                "The depth was not measured, and the basis gives no ratio of depth to length to "
+                "assume."
+            )
+        return assessment.KINDS[through]
+    return kind
 
 
-def _sizing(sizing: Any, method: str) -> Any:
-    """The sizing error of a method, or the text that says there is none."""
-    if isinstance(sizing, str):
+def _sizing_for(body: dict[str, Any], method: str, kind: assessment.Kind) -> Any:
+    """The sizing error of a method for the sizes that the kind has; None where none is known."""
+    sizing = body.get("sizing", {}).get(method)
+    if sizing is None or isinstance(sizing, str):
         return sizing
-    return _without_source(sizing) | {"method": method}
+    has = {size.split("_")[0] for size in (*kind.sizes, *kind.optional_sizes)}
+    kept = {
+        key: value
+        for key, value in _without_source(sizing).items()
+        if key.split("_")[0] in has or not key.startswith(("depth_", "length_"))
+    }
+    return kept | {"method": method}
 
 
-def _depth(body: dict[str, Any], kind: str, m: Measurement) -> dict[str, Any]:
-    if kind in NO_DEPTH:
-        return {}
+def _through_loading(loading: dict[str, Any]) -> dict[str, Any]:
+    """What bends the wall, as membrane stress at its outer-fibre value: a through crack takes
+    membrane stress alone, and nowhere along its front acts more than that."""
+    made = dict(loading)
+    if isinstance(made.get("peak"), dict):
+        made["peak"] = _bending_as_membrane(made["peak"])
+    if isinstance(made.get("cycles"), list):
+        made["cycles"] = [_bending_as_membrane(block) for block in made["cycles"]]
+    return made
+
+
+def _bending_as_membrane(loads: dict[str, Any]) -> dict[str, Any]:
+    made = dict(loads)
+    for bending in [key for key in made if key.startswith("bending_")]:
+        membrane = bending.replace("bending_", "membrane_")
+        made[membrane] = made.get(membrane, 0) + abs(made.pop(bending))
+    return made
+
+
+def _depth(body: dict[str, Any], m: Measurement) -> dict[str, Any]:
     if m.depth_basis == DepthBasis.MEASURED:
         return {"depth_mm": m.depth_mm}
     if m.depth_basis == DepthBasis.AT_LEAST:
         return {"depth_mm": m.depth_mm, "depth_basis": "at least"}
-    ratio = body.get("depth_ratio")
-    if ratio is not None and m.length_mm is not None:
-        depth = (m.length_mm * Decimal(ratio["value"])).quantize(Decimal("0.001"))
-        return {
-            "depth_mm": depth,
-            "depth_basis": "assumed",
-            "depth_source": f"depth taken as {ratio['value']} of the length: {ratio['source']}",
-        }
-    if kind in THROUGH_OF:
-        return {"kind": THROUGH_OF[kind]}
-    raise _NoCase(
-        "The depth was not measured, and the basis gives no ratio of depth to length to assume."
-    )
+    ratio = body["depth_ratio"]
+    depth = (Decimal(m.length_mm or 0) * Decimal(ratio["value"])).quantize(Decimal("0.001"))
+    return {
+        "depth_mm": depth,
+        "depth_basis": "assumed",
+        "depth_source": f"depth taken as {ratio['value']} of the length: {ratio['source']}",
+    }
 
 
 def _history(body: dict[str, Any], crack: Crack, sizes: list[Measurement]) -> list[dict[str, Any]]:
@@ -221,20 +250,28 @@ def _history(body: dict[str, Any], crack: Crack, sizes: list[Measurement]) -> li
         if m.length_mm is not None:
             entry["length_mm"] = m.length_mm
         sizing = body.get("sizing", {}).get(inspection.method)
-        if sizing is not None:
-            entry["sizing"] = _sizing(sizing, inspection.method)
+        if isinstance(sizing, dict):
+            entry["sizing"] = _without_source(sizing) | {"method": inspection.method}
+        elif sizing is not None:
+            entry["sizing"] = sizing
         made.append(entry)
     return made
 
 
-def _not_found(body: dict[str, Any]) -> dict[str, Any]:
+def _not_found(body: dict[str, Any], look: Finding) -> dict[str, Any]:
     could_miss = body.get("could_miss")
     if could_miss is None:
         raise _NoCase(
             "Nothing was found, and the basis does not say what size of crack the look could have "
             "missed."
         )
-    return {"crack": {"kind": body["kind"], "found": False, "assumed": could_miss}}
+    made = {"kind": body["kind"], "found": False, "assumed": could_miss}
+    kind = assessment.KINDS[body["kind"]]
+    sizing = _sizing_for(body, look.inspection.method, kind)
+    # Not an error of the assumed size: it serves the stop size of a crack that is found next.
+    if sizing is not None:
+        made["sizing"] = sizing
+    return {"crack": made}
 
 
 def _previous(location: Location, crack: Crack | None) -> dict[str, Any] | None:

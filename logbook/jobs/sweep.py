@@ -12,6 +12,7 @@ from django_tasks_db.models import DBTaskResult
 
 from logbook import clock
 from logbook.models import AssessmentAsked, Beat
+from logbook.records.issue import issue, outstanding
 
 BEAT_SECONDS = 5
 DEAD_SECONDS = 30
@@ -53,6 +54,14 @@ def enqueue_owed(older_than_seconds: float = OWED_SECONDS) -> int:
     return len(owed)
 
 
+def issue_outstanding() -> int:
+    """Print the records whose number was reserved and whose issue died; returns how many."""
+    waiting = outstanding()
+    for record in waiting:
+        issue(record)
+    return len(waiting)
+
+
 class Heart(threading.Thread):
     """Beats, releases and sweeps beside a worker until told to stop. An error that is not
     swallowed here would stop the beat, and the worker would be taken for dead: so it does."""
@@ -70,6 +79,7 @@ class Heart(threading.Thread):
                 release_dead_tasks()
                 if rounds % 4 == 0:
                     enqueue_owed()
+                    issue_outstanding()
                 rounds += 1
         finally:
             connection.close()

@@ -40,7 +40,7 @@ from logbook.actions.revise_basis import adopt_basis, revise_basis
 from logbook.actions.set_unsigned_policy import set_unsigned_policy
 from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
-from logbook.actions.standing import latest_assessment
+from logbook.actions.standing import latest_assessment, latest_disposition
 from logbook.actions.strike_out import strike_out
 from logbook.entry import read_inspection
 from logbook.management.scenario.picture import draw
@@ -276,7 +276,7 @@ class _Loading:
         for location in Location.objects.filter(component__tag=tag).order_by("number"):
             for crack in (None, *location.cracks.filter(closed_at__isnull=True)):
                 a = latest_assessment(location, crack)
-                if a is not None and not a.reviews.exists():
+                if a is not None and not a.reviews.exists() and not _good_for_long(a):
                     self._sign(a)
 
     def _sign(self, a: Assessment) -> Disposition | None:
@@ -295,6 +295,14 @@ class _Loading:
         if signed.verdict == Verdict.RESTRICT:
             confirm_restriction(self.people["ivo"], signed.pk, "load limiter set; tag 0417 hung")
         return signed
+
+
+def _good_for_long(a: Assessment) -> bool:
+    """The same verdict is signed and stands for most of a year: nobody signs it again."""
+    d = latest_disposition(a.location, a.crack)
+    if d is None or d.verdict != a.verdict or d.until_on is None:
+        return False
+    return d.until_on > clock.now().date() + datetime.timedelta(days=300)
 
 
 def _answer_all(inspection: Any) -> None:
