@@ -81,6 +81,9 @@ def _finished(svg: str, name: str, title: str) -> str:
     svg = re.sub(r'(<[^<>]* clip-path="url\(#)(\w+)', lambda found: found[1] + clips[found[2]], svg)
     # Unsaid weight is the page's own, so that the sun look can make all text bold.
     svg = re.sub(r'(<[^<>]*) font-weight="normal"', r"\1", svg)
+    # The figure has one name, its title; its inner groups are no pictures of their own.
+    inner = r' (?:role="graphics-[a-z]+"|aria-roledescription="[^"]*"|aria-hidden="true")'
+    svg = re.sub(r"<g [^<>]*>", lambda found: re.sub(inner, "", found[0]), svg)
     size = re.search(r'width="([\d.]+)" height="([\d.]+)" viewBox="[^"]*"', svg)
     if size is None:
         raise ValueError("the chart came back without a size")
