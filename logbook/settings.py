@@ -38,6 +38,7 @@ def _list(value: str) -> list[str]:
 
 DATA_DIR = Path(os.environ.get("LOGBOOK_DATA", BASE_DIR / ".data")).resolve()
 DATA_DIR.mkdir(mode=0o700, parents=True, exist_ok=True)
+(DATA_DIR / "static").mkdir(exist_ok=True)
 
 
 def _trial_key() -> str:
@@ -162,7 +163,7 @@ DEFAULT_AUTO_FIELD = "django.db.models.BigAutoField"
 AUTH_USER_MODEL = "logbook.Person"
 AUTHENTICATION_BACKENDS = [
     "axes.backends.AxesStandaloneBackend",
-    "django.contrib.auth.backends.ModelBackend",
+    "logbook.accounts.Accounts",
 ]
 PASSWORD_HASHERS = ["django.contrib.auth.hashers.Argon2PasswordHasher"]
 AUTH_PASSWORD_VALIDATORS = [

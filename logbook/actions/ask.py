@@ -14,10 +14,5 @@ def for_assessment(location: Location, crack: Crack | None, because: uuid.UUID) 
         location=location, crack=crack, because_act=because, defaults={"asked_at": clock.now()}
     )
     standing.refresh(location, crack)
-
-
-def for_place_and_its_cracks(location: Location, because: uuid.UUID) -> None:
-    """The place itself and every open crack there: after its basis changed, say."""
-    for_assessment(location, None, because)
-    for crack in location.cracks.filter(closed_at__isnull=True):
-        for_assessment(location, crack, because)
+    if crack is not None:
+        standing.refresh(location, None)

@@ -101,8 +101,9 @@ def _read(outcome: dict[str, Any], location: Location) -> _Answer:
     proposed = outcome["disposition"]
     next_look = outcome.get("next_inspection") or {}
     stop = outcome.get("stop_size") or {}
-    # A repair before return to service has no date to wait for: with one, the part could be used.
-    waits = not proposed.get("before_return")
+    # What stands still has no date to wait for: with one, the part could be used until then.
+    stands_still = proposed["verdict"] in (Verdict.WITHDRAW, Verdict.REFER)
+    waits = not (stands_still or proposed.get("before_return"))
     on = next_look.get("on") if waits else None
     return _Answer(
         verdict=proposed["verdict"],

@@ -96,7 +96,7 @@ def return_to_service(
             site=site,
             because_of=[repair.leaf_id],
         )
-        for crack in touched:
+        for crack in dict.fromkeys([*touched, None]):
             standing.refresh(repair.location, crack)
     return made
 

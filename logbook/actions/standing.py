@@ -56,7 +56,7 @@ def refresh(location: Location, crack: Crack | None) -> Standing | None:
     after the leaf of the act: what is newer is told by the leaves.
 
     None where nothing stands any more: a closed crack that was returned to service, a place that
-    nobody has looked at.
+    nobody has looked at, or one whose open cracks stand for it.
     """
     rows = Standing.objects.filter(location=location, crack=crack)
     what = _what(location, crack)
@@ -147,6 +147,8 @@ def _open_repair(location: Location, crack: Crack | None) -> Repair | None:
 def _what(location: Location, crack: Crack | None) -> _What | None:
     if crack is not None and crack.closed_at is not None and not _open_repair(location, crack):
         return None
+    if crack is None and location.cracks.filter(closed_at__isnull=True).exists():
+        return None  # the open cracks stand for their place
     asked = AssessmentAsked.objects.filter(location=location, crack=crack).exists()
     assessment = latest_assessment(location, crack)
     disposition = latest_disposition(location, crack)

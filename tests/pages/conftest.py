@@ -19,7 +19,7 @@ def as_(book: Book) -> Callable[[str], Client]:
 
     def signed_in(name: str) -> Client:
         client = Client(raise_request_exception=True)
-        client.force_login(book.people[name], backend="django.contrib.auth.backends.ModelBackend")
+        client.force_login(book.people[name], backend="logbook.accounts.Accounts")
         return client
 
     return signed_in
