@@ -83,7 +83,7 @@ def _compared(one: Basis, before: Basis | None) -> list[dict[str, str]]:
     now = _lines(one)
     rows = [
         {
-            "label": line.label,
+            "label": line.label.removeprefix("crack, "),
             "value": line.value,
             "source": line.source,
             "was": was.get(line.label, "") if was.get(line.label) != line.value else "",
@@ -92,7 +92,7 @@ def _compared(one: Basis, before: Basis | None) -> list[dict[str, str]]:
     ]
     here = {line.label for line in now}
     gone = [
-        {"label": label, "value": "", "source": "", "was": value}
+        {"label": label.removeprefix("crack, "), "value": "", "source": "", "was": value}
         for label, value in was.items()
         if label not in here
     ]

@@ -31,7 +31,7 @@ def frame(request: HttpRequest) -> dict[str, Any]:
         "look": look_of(request),
         "looks": LOOKS,
         "person": person if signed_in else None,
-        "decimal_sign": person.decimal_sign if signed_in else ".",
+        "decimal_sign": getattr(person, "decimal_sign", "."),
         "my_roles": roles,
         "decides": bool(roles & DECIDING),
         "now": clock.now(),

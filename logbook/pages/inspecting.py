@@ -4,7 +4,7 @@ import hashlib
 from typing import Any
 
 from django.contrib.auth.decorators import login_required
-from django.core.files.uploadedfile import UploadedFile
+from django.core.files.base import File
 from django.db.models import QuerySet
 from django.http import HttpResponse
 from django.shortcuts import redirect, render
@@ -119,14 +119,14 @@ def _write(request: Asked, form: InspectionForm) -> HttpResponse:
     return redirect("inspection", inspection.pk)
 
 
-def _digest(file: UploadedFile) -> str:
+def _digest(file: File[bytes]) -> str:
     digest = hashlib.sha256()
     for chunk in file.chunks():
         digest.update(chunk)
     return digest.hexdigest()
 
 
-def _arrive(request: Asked, photo: Photo, file: UploadedFile) -> None:
+def _arrive(request: Asked, photo: Photo, file: File[bytes]) -> None:
     """The entry is in the book already: a photo that cannot be kept is said, and can be sent
     again from the entry's page.
     """

@@ -26,7 +26,7 @@ from logbook.actions.register_person import register_person
 from logbook.actions.register_site import register_site
 from logbook.actions.set_unsigned_policy import set_unsigned_policy
 from logbook.errors import Refusal, invalid, not_permitted
-from logbook.models import Component, Licence, Location, Material, Person, Site
+from logbook.models import Component, Licence, Location, Material, Person, Photo, Site
 
 from .asked import Asked, may
 from .deciding import licences_of
@@ -275,7 +275,7 @@ def mark(request: Asked, pk: int) -> HttpResponse:
             if said.status in (403, 404):
                 raise
             refusal = said
-    height = round(MARKING_WIDTH * shown.height / shown.width) if shown is not None else 0
+    height = marking_height(shown) if shown is not None else 0
     return render(
         request,
         "logbook/mark.html",
@@ -295,6 +295,10 @@ def mark(request: Asked, pk: int) -> HttpResponse:
     )
 
 
+def marking_height(shown: Photo) -> int:
+    return round(MARKING_WIDTH * (shown.height or 0) / (shown.width or 1))
+
+
 def _fractions(request: Asked, shown: Any) -> tuple[float, float]:
     """The touched point as parts of the picture's width and height."""
     try:
@@ -306,7 +310,7 @@ def _fractions(request: Asked, shown: Any) -> tuple[float, float]:
         ) from None
     if not width > 0:
         raise invalid(_("No point was touched."), {"mark": [_("Touch the picture itself.")]})
-    return x / width, y / (width * shown.height / shown.width)
+    return x / width, y * shown.width / (width * shown.height)
 
 
 def _unmarked(component: Component, place: Location) -> list[Location]:

@@ -5,13 +5,14 @@ import datetime
 from django.contrib.auth.decorators import login_required
 from django.core.paginator import Paginator
 from django.db.models import Case, F, IntegerField, Q, QuerySet, Value, When
-from django.http import HttpRequest, HttpResponse
+from django.http import HttpResponse
 from django.shortcuts import render
 from django.utils.translation import gettext as _
 
 from logbook import access, clock
 from logbook.models import Component, Site, Standing
 
+from .asked import Asked
 from .lines import RELATED, Line, finding_words, lines
 
 A_PAGE = 50
@@ -19,14 +20,14 @@ OVERDUE, OUT_OF_USE, THIS_WEEK, LATER, NO_DATE = range(5)
 
 
 @login_required
-def today(request: HttpRequest) -> HttpResponse:
+def today(request: Asked) -> HttpResponse:
     sites = list(access.sites_of(request.user))
     rows = due_rows(sites)
     site_slug = request.GET.get("site", "")
     if site_slug:
         rows = rows.filter(site__slug=site_slug)
     leaf = Paginator(rows, A_PAGE).get_page(request.GET.get("leaf"))
-    groups = grouped(leaf.object_list, request.user.decimal_sign)
+    groups = grouped(list(leaf.object_list), request.user.decimal_sign)
     return render(
         request,
         "logbook/today.html",
@@ -77,7 +78,6 @@ def grouped(rows: list[Standing], decimal_sign: str) -> list[tuple[str, list[tup
         NO_DATE: _("No date is set"),
     }
     groups: dict[str, list[tuple[Line, str]]] = {}
-    rows = list(rows)
     for row, one in zip(rows, lines(rows, decimal_sign), strict=True):
         heading = headings[row.group]  # type: ignore[attr-defined]
         groups.setdefault(heading, []).append((one, finding_words(one.finding, decimal_sign)))

@@ -33,16 +33,20 @@ def counts(unit: str) -> str:
     return words.counts(unit)
 
 
+def _sign(context: template.Context) -> str:
+    return str(context.get("decimal_sign", "."))
+
+
 @register.simple_tag(takes_context=True)
 def num(context: template.Context, value: Decimal | float | None) -> str:
     """A number as this person reads it; empty for none."""
-    return "" if value is None else writing.number(value, context.get("decimal_sign", "."))
+    return "" if value is None else writing.number(value, _sign(context))
 
 
 @register.simple_tag(takes_context=True)
 def usage(context: template.Context, at: Decimal, unit: str) -> str:
     """14,950 hours."""
-    return writing.usage(at, unit, context.get("decimal_sign", "."))
+    return writing.usage(at, unit, _sign(context))
 
 
 @register.simple_tag(takes_context=True)
@@ -50,7 +54,7 @@ def mm(context: template.Context, value: Decimal | float | None) -> SafeString:
     """8.4 mm, the unit in Regular."""
     if value is None:
         return format_html("{}", _("not measured"))
-    said = writing.number(value, context.get("decimal_sign", "."))
+    said = writing.number(value, _sign(context))
     return format_html('<span class="whole">{}&nbsp;<span class="unit">mm</span></span>', said)
 
 

@@ -7,7 +7,7 @@ from django.utils.translation import gettext_lazy as _
 
 from logbook.models import DepthBasis, Disposition, Licence, Review, Verdict
 
-from .fields import Choice, Day, Number, Password, Text
+from .fields import Choice, Day, Number, Password, Text, offer
 
 CREW_VERDICTS = [
     (Verdict.CONTINUE, _("continue: may stay in use")),
@@ -48,9 +48,10 @@ class SignatureForm(forms.Form):
 
     def __init__(self, *args: Any, licences: list[Licence], **kwargs: Any) -> None:
         super().__init__(*args, **kwargs)
-        self.fields["licence"].choices = [
-            (str(one.pk), f"{one} · {one.discipline}") for one in licences
-        ]
+        offer(
+            self.fields["licence"],
+            [(str(one.pk), f"{one} · {one.discipline}") for one in licences],
+        )
 
 
 class SignForm(SignatureForm):

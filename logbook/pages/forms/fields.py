@@ -1,7 +1,6 @@
 """Fields as the book asks for them: nothing chosen beforehand, comma and point both read."""
 
 from collections.abc import Iterable
-from decimal import Decimal
 from typing import Any
 
 from django import forms
@@ -36,7 +35,7 @@ class Number(forms.DecimalField):
         widget = forms.TextInput(attrs={"inputmode": "decimal", "autocomplete": "off"})
         super().__init__(label=label, error_messages=messages, widget=widget, **kwargs)
 
-    def to_python(self, value: Any) -> Decimal | None:
+    def to_python(self, value: Any) -> Any:
         if isinstance(value, str):
             value = value.strip().replace(",", ".")
         return super().to_python(value)
@@ -67,6 +66,13 @@ class Pick(forms.ChoiceField):
             error_messages=MISSING | {"invalid_choice": _("Choose one of these.")},
             **kwargs,
         )
+
+
+def offer(field: forms.Field, choices: list[tuple[str, str]]) -> None:
+    """What can be chosen here, known only when the page is asked for."""
+    if not isinstance(field, forms.ChoiceField):
+        raise TypeError(f"{type(field).__name__} offers no choices")
+    field.choices = choices
 
 
 class Tick(forms.BooleanField):

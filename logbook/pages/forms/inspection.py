@@ -84,7 +84,7 @@ class Block:
     @property
     def confirm_asked(self) -> bool:
         """A size was asked back, or its tick is already set."""
-        asked = any("Check the decimal point" in one for all_ in self.said.values() for one in all_)
+        asked = any("this size is right" in one for all_ in self.said.values() for one in all_)
         return asked or bool(self.typed.get("confirm_unlikely"))
 
     def finding(self) -> dict[str, Any]:

@@ -8,7 +8,7 @@ from django.utils.translation import gettext_lazy as _
 from logbook.models import Role
 
 from .deciding import SignatureForm
-from .fields import Choice, Day, Number, Password, Pick, Text
+from .fields import Choice, Day, Number, Password, Pick, Text, offer
 
 # What is the body, where does it start, does it go through.
 KINDS = [
@@ -122,8 +122,5 @@ class BasisForm(forms.Form):
 
     def __init__(self, *args: Any, materials: Any, **kwargs: Any) -> None:
         super().__init__(*args, **kwargs)
-        picked = self.fields["material"]
-        picked.choices = [
-            *picked.choices,
-            *((str(one.pk), str(one)) for one in materials),
-        ]
+        named = [(str(one.pk), str(one)) for one in materials]
+        offer(self.fields["material"], [("", str(_("– choose –"))), *named])
