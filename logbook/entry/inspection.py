@@ -179,6 +179,8 @@ def _finding(r: _Reader, known: Known) -> FindingDraft | None:
     }.get(what)
     why = r.line("why", 500, why_missing)
     place = known.locations.get(location) if isinstance(location, int) else None
+    if what == "nothing":
+        _known_here(r, location, known)
     crack, of = _crack(r, what, location, known)
     sizes = _sizes(r, place, of) if what == "crack" else None
     if location is None:
@@ -195,6 +197,17 @@ def _finding(r: _Reader, known: Known) -> FindingDraft | None:
     )
 
 
+def _known_here(r: _Reader, location: int | NewLocation | None, known: Known) -> None:
+    """A known crack does not end by not being mentioned: it was seen, or it was not."""
+    for crack in known.cracks.values():
+        if crack.location == location and not crack.closed:
+            r.complain(
+                "what",
+                f"Crack {crack.number} is known here. Say that you saw it, with its size, or "
+                "choose “known crack not seen” and say why.",
+            )
+
+
 def _location(r: _Reader, known: Known) -> int | NewLocation | None:
     new = r.data.get("new_location")
     if isinstance(new, Mapping) and (new.get("name") or new.get("described")):
@@ -205,11 +218,11 @@ def _location(r: _Reader, known: Known) -> int | NewLocation | None:
         )
         r.complaints.update(n.complaints)
         return made
-    try:
-        pk = int(str(r.data.get("location", "")))
-    except ValueError:
+    given = str(r.data.get("location", "")).strip()
+    if not (given.isdecimal() and given.isascii() and len(given) < 19):
         r.complain("location", "Say at which place.")
         return None
+    pk = int(given)
     if pk not in known.locations:
         r.complain("location", "This place is not on this component.")
         return None
@@ -227,7 +240,11 @@ def _crack(
     if not given:
         r.complain("crack", "Say which crack it is: one that is known here, or a new one.")
         return None, None
-    found = known.cracks.get(int(given)) if given.isdecimal() and len(given) < 9 else None
+    found = (
+        known.cracks.get(int(given))
+        if given.isdecimal() and given.isascii() and len(given) < 9
+        else None
+    )
     if found is None or found.location != location:
         r.complain("crack", f"There is no crack {given} at this place. Choose one, or “new”.")
         return None, None
