@@ -54,13 +54,39 @@ class Plan:
         self.taken.append(Rect(x - reach, y - reach, x + reach, y + reach))
 
     def take_line(self, points: Iterable[Point], reach: float = 3) -> None:
-        """A line by the points along it, six px apart at most."""
+        """A line by the points along it, six px apart at most; what leaves the view takes nothing,
+        however far it runs."""
         spots = [self.px(point) for point in points]
-        for (x1, y1), (x2, y2) in pairwise(spots):
+        for start, end in pairwise(spots):
+            inside = self._within(start, end)
+            if inside is None:
+                continue
+            (x1, y1), (x2, y2) = inside
             parts = max(1, round(max(abs(x2 - x1), abs(y2 - y1)) / 6))
             for n in range(parts + 1):
                 x, y = x1 + (x2 - x1) * n / parts, y1 + (y2 - y1) * n / parts
                 self.taken.append(Rect(x - reach, y - reach, x + reach, y + reach))
+
+    def _within(self, start: Point, end: Point) -> tuple[Point, Point] | None:
+        """The part of a straight line that lies in the view, by its fractions at the four edges."""
+        first, last = 0.0, 1.0
+        for a, b, most in (
+            (start[0], end[0], self.view.width),
+            (start[1], end[1], self.view.height),
+        ):
+            if a == b:
+                if not 0 <= a <= most:
+                    return None
+                continue
+            near, far = sorted(((0 - a) / (b - a), (most - a) / (b - a)))
+            first, last = max(first, near), min(last, far)
+        if first > last:
+            return None
+        run = (end[0] - start[0], end[1] - start[1])
+        return (
+            (start[0] + first * run[0], start[1] + first * run[1]),
+            (start[0] + last * run[0], start[1] + last * run[1]),
+        )
 
     def put(
         self, text: str | Sequence[str], places: Sequence[Place], *, bold: bool = False
