@@ -7,6 +7,7 @@ needed for; a colleague who may see but not change gets a plain refusal.
 from collections.abc import Mapping
 from typing import Any, TypeVar
 
+from django.core.exceptions import ObjectDoesNotExist
 from django.db.models import Model, QuerySet
 
 from logbook.errors import not_found, not_permitted
@@ -91,7 +92,7 @@ def require(person: Person, site: Site, need: str) -> None:
 def _one(rows: QuerySet[M], site_path: str, person: Person, pk: Any, need: str, what: str) -> M:
     try:
         row = rows.get(pk=pk, **{f"{site_path}__in": sites_of(person)})
-    except (rows.model.DoesNotExist, ValueError, OverflowError):
+    except (ObjectDoesNotExist, ValueError, OverflowError):
         raise not_found(what) from None
     site: Any = row
     for step in site_path.split("__"):

@@ -39,7 +39,7 @@ def content_of(draft: InspectionDraft) -> dict[str, object]:
     """All that the person said, in exact form; names are kept beside the leaf."""
     said = asdict(draft)
     said.pop("inspector_name")
-    return json.loads(canonical.text(said))  # type: ignore[no-any-return]
+    return json.loads(canonical.text(said))
 
 
 def digest_of(draft: InspectionDraft) -> str:
@@ -141,7 +141,7 @@ def _write_finding(inspection: Inspection, act: uuid.UUID, f: FindingDraft, by: 
         remarks=f.remarks,
         crack=_crack(inspection.component, location, f),
     )
-    if f.sizes is not None:
+    if f.sizes is not None and finding.crack is not None:
         Measurement.objects.create(
             leaf_id=act,
             finding=finding,

@@ -42,7 +42,11 @@ def strike_out(
     try:
         with transaction.atomic():
             Component.objects.select_for_update().get(pk=component.pk)
-            right = _right(finding, act, depth_basis, depth_mm, length_mm, typed) if new else None
+            right = (
+                _right(finding, act, depth_basis, depth_mm, length_mm, typed)
+                if depth_basis is not None
+                else None
+            )
             made = StrikeOut.objects.create(
                 leaf_id=act,
                 finding=finding,
@@ -90,8 +94,11 @@ def _check_sizes(depth_basis: str, depth_mm: Any, length_mm: Any) -> None:
 
 
 def _right(
-    wrong: Finding, act: uuid.UUID, depth_basis: str | None, depth: Any, length: Any, typed: str
+    wrong: Finding, act: uuid.UUID, depth_basis: str, depth: Any, length: Any, typed: str
 ) -> Finding:
+    crack = wrong.crack
+    if crack is None:
+        raise invalid("Only a size can be corrected.", {"depth_basis": ["Leave them empty."]})
     made = Finding.objects.create(
         leaf_id=act,
         inspection=wrong.inspection,
@@ -103,7 +110,7 @@ def _right(
     Measurement.objects.create(
         leaf_id=act,
         finding=made,
-        crack=wrong.crack,
+        crack=crack,
         depth_basis=depth_basis,
         depth_mm=depth,
         length_mm=length,

@@ -48,7 +48,7 @@ def check_basis_body(body: dict[str, Any]) -> None:
         )
     crack: dict[str, Any] = {"kind": kind.name, "found": True}
     crack |= {size: PROBE[size] for size in kind.sizes}
-    case = {
+    case: dict[str, Any] = {
         "case": 1,
         "crack": crack,
         "usage": {"unit": "count", "per_day": 1, "at": 0, "on": "2000-01-01"},

@@ -27,7 +27,7 @@ ASKED_APART = ("kind", "material", "material_ref", "sources", "usage")
 
 
 def _read(text: str) -> dict[str, Any]:
-    return json.loads(text, parse_float=Decimal)  # type: ignore[no-any-return]
+    return json.loads(text, parse_float=Decimal)
 
 
 def _around(request: Asked, place: Location) -> dict[str, Any]:

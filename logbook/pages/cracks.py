@@ -67,7 +67,7 @@ def figures(
 def outcome_of(proposal: Assessment | None) -> dict[str, Any]:
     if proposal is None or proposal.outcome_text is None:
         return {}
-    return json.loads(proposal.outcome_text)  # type: ignore[no-any-return]
+    return json.loads(proposal.outcome_text)
 
 
 def working(proposal: Assessment | None) -> list[dict[str, Any]]:

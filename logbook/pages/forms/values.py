@@ -165,7 +165,7 @@ class Values:
         wrong = {row.name or "name": row.said for row in self.rows if row.said}
         if wrong:
             raise invalid(_("Some of these names do not fit."), wrong)
-        return _lists(body)  # type: ignore[no-any-return]
+        return _lists(body)
 
     def _put(self, body: dict[str, Any], row: Row) -> None:
         if not NAME.fullmatch(row.name):
