@@ -38,7 +38,8 @@ TOLERANCE = 1e-7
 FIRST_STEP = 0.05
 LARGEST_STEP = 0.3
 MOST_STEPS = 1500
-HALVINGS = 34
+HALVINGS = 60
+BRACKET = 1e-11
 
 _A = (
     (),
@@ -234,7 +235,8 @@ class _Run:
             row = np.arange(samples)
             low = np.where(first > 0, tried[row, first - 1], low)
             high = tried[row, first]
-            if np.all(high - low <= 1e-10):
+            # Of the way to the event, so that a life of a few cycles is as exact as a long one.
+            if np.all(high - low <= BRACKET * high):
                 break
         state, _ = self._step(y, high, growing)
         # Where the far side cannot be evaluated, the near side is the end of the range.

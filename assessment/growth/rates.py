@@ -45,11 +45,10 @@ def _upper(block: CycleBlock, name: str) -> float:
 
 
 def k_by_load(kind: Kind, x: Floats, names: Sequence[str], body: Body) -> Floats:
-    """K in MPa√m for 1 MPa of each load: shape (loads, points, samples)."""
-    zero = dict.fromkeys(names, np.asarray(0.0))
-    return np.stack(
-        [kind.stress_intensity(x, {**zero, name: np.asarray(1.0)}, body) for name in names]
-    )
+    """K in MPa√m for 1 MPa of each load: shape (loads, points, samples). x : (points, samples)."""
+    # The loads stand on an axis of their own, so that the geometry is worked out once for all.
+    one_each = {name: row[:, None] for name, row in zip(names, np.eye(len(names)), strict=True)}
+    return np.moveaxis(kind.stress_intensity(x, one_each, body), 1, 0)
 
 
 def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> Floats:
