@@ -1,15 +1,6 @@
-"""What every test shares: its own data folder, and the triggers lifted around each flush."""
+"""What every test shares: the triggers lifted around each flush. The data folder: own_data.py."""
 
-import os
-import tempfile
-
-# Before Django is set up: tests never touch the data of the checkout.
-_folder = tempfile.TemporaryDirectory(prefix="logbook-tests-")
-os.environ["LOGBOOK_DATA"] = _folder.name
-os.environ["LOGBOOK_MODE"] = "trial"
-os.environ.setdefault("DJANGO_ALLOW_ASYNC_UNSAFE", "true")
-
-import pytest  # noqa: E402
+import pytest
 
 
 @pytest.fixture(scope="session", autouse=True)

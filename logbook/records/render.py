@@ -38,11 +38,11 @@ FONTS = {
 FIGURE_MM = 0.227
 
 
-class Refused(FatalURLFetchingError):  # type: ignore[misc]
+class Refused(FatalURLFetchingError):
     """Something in the record pointed outside it. That must never be, so it stops the issue."""
 
 
-class OnlyOurs(URLFetcher):  # type: ignore[misc]
+class OnlyOurs(URLFetcher):
     """Answers ``record:`` names from what it was given, and refuses every other address."""
 
     def __init__(self, given: Mapping[str, tuple[bytes, str]]) -> None:
