@@ -70,7 +70,7 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
         ),
         parts.step_factor(
             "Geometry factor, bending",
-            "F_b = 1.122 − 1.40 α + 7.33 α² − 13.08 α³ + 14.0 α⁴, any-depth form from α = 0.6",
+            "F_b = 1.122 − 1.40 α + 7.33 α² − 13.08 α³ + 14.0 α⁴, any-depth form from α = 0.63",
             numbers,
             bend,
             edge_crack.BENDING.source,
