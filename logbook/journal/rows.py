@@ -38,7 +38,7 @@ def written(act: uuid.UUID) -> dict[str, dict[str, str]]:
     """Table to primary key to digest, for every row that carries the act."""
     found: dict[str, dict[str, str]] = {}
     for model in act_models():
-        rows = {str(row.pk): digest(row) for row in model._default_manager.filter(leaf_id=act)}
+        rows = {str(row.pk): digest(row) for row in model._default_manager.filter(leaf_id=str(act))}
         if rows:
             found[model._meta.db_table] = rows
     return found
