@@ -234,6 +234,7 @@ SPECTACULAR_SETTINGS = {
     "DESCRIPTION": "Log inspections of parts in service; read what was decided on them.",
     "VERSION": "1",
     "SERVE_INCLUDE_SCHEMA": False,
+    "SERVE_PERMISSIONS": ["rest_framework.permissions.IsAuthenticated"],
     "ENUM_NAME_OVERRIDES": {"DepthBasis": "logbook.models.inspection.DepthBasis.choices"},
     "SWAGGER_UI_DIST": "SIDECAR",
     "SWAGGER_UI_FAVICON_HREF": "SIDECAR",
