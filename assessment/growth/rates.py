@@ -53,8 +53,8 @@ def k_by_load(kind: Kind, x: Floats, names: Sequence[str], body: Body) -> Floats
 
 def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> Floats:
     """The law's effective range, shape (blocks, points, samples); nil where it stays shut."""
-    first = np.tensordot(drive.upper, unit_k, axes=1)
-    second = np.tensordot(drive.lower, unit_k, axes=1)
+    first = _weighed(drive.upper, unit_k)
+    second = _weighed(drive.lower, unit_k)
     high = np.maximum(np.maximum(first, second), 0.0)
     low = np.maximum(np.minimum(first, second), 0.0)
     ratio = np.divide(low, high, out=np.zeros_like(low), where=high > 0.0)
@@ -67,7 +67,13 @@ def rates_from(
     """m per unit of usage at each point, summed over the blocks that grow it."""
     # The rate is evaluated where it counts only; elsewhere 1 stands in and is masked out.
     per_cycle = np.where(growing, law.rate_at(np.where(effective > 0.0, effective, 1.0)), 0.0)
-    return np.asarray(np.tensordot(drive.per_usage, per_cycle, axes=1))
+    return _weighed(drive.per_usage, per_cycle)
+
+
+def _weighed(weights: Floats, values: Floats) -> Floats:
+    """Sum over the first axis of ``values``, for each row of ``weights``."""
+    flat = weights @ values.reshape(len(values), -1)
+    return np.asarray(flat.reshape(weights.shape[:-1] + values.shape[1:]))
 
 
 def rates(
