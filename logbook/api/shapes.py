@@ -13,6 +13,7 @@ from logbook.models import (
     Assessment,
     Component,
     Crack,
+    DepthBasis,
     Disposition,
     Finding,
     Inspection,
@@ -208,7 +209,7 @@ class FindingSent(serializers.Serializer[Any]):
     part_not_seen = serializers.CharField(required=False)
     remarks = serializers.CharField(required=False)
     crack = serializers.CharField(required=False, help_text='its number on the part, or "new"')
-    depth_basis = serializers.ChoiceField(["measured", "at-least", "not-measured"], required=False)
+    depth_basis = serializers.ChoiceField(DepthBasis.choices, required=False)
     depth_mm = serializers.CharField(required=False)
     length_mm = serializers.CharField(required=False)
     why_smaller = serializers.CharField(required=False)
@@ -248,7 +249,7 @@ class InspectionAnswer(serializers.Serializer[Any]):
 
 class StrikeOutSent(serializers.Serializer[Any]):
     reason = serializers.CharField()
-    depth_basis = serializers.ChoiceField(["measured", "at-least", "not-measured"], required=False)
+    depth_basis = serializers.ChoiceField(DepthBasis.choices, required=False)
     depth_mm = serializers.CharField(required=False)
     length_mm = serializers.CharField(required=False)
 
