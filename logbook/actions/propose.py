@@ -121,10 +121,10 @@ def _read(outcome: dict[str, Any], location: Location) -> _Answer:
 
 
 def _counter(value: float | None) -> Decimal | None:
-    """Rounded down: a look is never later than reckoned."""
+    """A whole reading, rounded down: a look is never later than reckoned."""
     if value is None:
         return None
-    return Decimal(repr(value)).quantize(Decimal("0.001"), rounding=ROUND_FLOOR)
+    return Decimal(repr(value)).quantize(Decimal(1), rounding=ROUND_FLOOR)
 
 
 def _limit(outcome: dict[str, Any]) -> str:
