@@ -45,6 +45,8 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
         yield f"Cycles, as stated: {loading.cycles_said}."
     if loading.temperature is None:
         yield "No metal temperature is given: the toughness is taken to hold at the lowest one."
+    if case.owner.leak_tolerated:
+        yield "Leak before break is not computed yet: break-through ends the life here."
     if case.material.typical:
         yield "Material values are typical ones from a handbook and are not for acceptance."
     if became_through:

@@ -3,6 +3,8 @@
 import math
 from collections.abc import Iterator
 
+import numpy as np
+
 from assessment.document.case import Case, Look, Sizing
 
 
@@ -12,6 +14,7 @@ def needs(case: Case) -> tuple[str, ...]:
     found = [missing.sentence() for missing in case.missing]
     found.extend(f"The last look fell short: {short}" for short in case.shortfalls)
     found.extend(_smaller(case))
+    found.extend(_longer_than_the_front(case))
     found.extend(_overdue(case))
     return tuple(found)
 
@@ -35,6 +38,22 @@ def _smaller(case: Case) -> Iterator[str]:
                 f"{before * 1e3:.4g} mm of {largest.on} by more than the sizing error, and no "
                 "reason is stated."
             )
+
+
+def _longer_than_the_front(case: Case) -> Iterator[str]:
+    """A kind that assumes its front knows one length for each depth: a longer crack has the
+    higher stress intensity, which the published factor does not give."""
+    crack = case.crack
+    if crack.length is None or "length_mm" not in crack.kind.optional_sizes:
+        return
+    x = crack.kind.front(crack.depth, crack.length, case.body)
+    assumed = float(np.asarray(crack.kind.sizes_of(x, case.body)[1]))
+    deviations = case.criteria.size_confidence_sd or 0.0
+    if crack.length - deviations * _sd(crack.sizing, "length") > assumed:
+        yield (
+            f"crack.length_mm: the crack is {crack.length * 1e3:.4g} mm long, and the front that "
+            f"the published factor assumes for its depth is {assumed * 1e3:.4g} mm long."
+        )
 
 
 def _error(case: Case, look: Look, name: str) -> float:
