@@ -10,7 +10,7 @@ from typing import Any
 
 from django.conf import settings
 from django.db import transaction
-from PIL import Image, ImageOps, UnidentifiedImageError
+from PIL import Image, ImageFile, ImageOps, UnidentifiedImageError
 
 from logbook import access, clock
 from logbook.errors import invalid, not_found
@@ -84,6 +84,8 @@ def _wrong(sentence: str) -> Exception:
 
 def _decode(data: bytes) -> tuple[str, bytes, tuple[int, int]]:
     """Type by decoding, never by name; the copy carries no place and no camera details."""
+    # WeasyPrint switches this on for the whole process; half a photo is no photo here.
+    ImageFile.LOAD_TRUNCATED_IMAGES = False
     if len(data) > settings.PHOTO_MAX_BYTES:
         raise _wrong(f"The photo is larger than {settings.PHOTO_MAX_BYTES // 2**20} MB.")
     try:
