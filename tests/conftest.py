@@ -1,6 +1,11 @@
 """What every test shares: the triggers lifted around each flush. The data folder: own_data.py."""
 
 import pytest
+from hypothesis import settings
+
+# The same examples at each run: a check that fails does so for everyone, and none is timed.
+settings.register_profile("steady", derandomize=True, deadline=None)
+settings.load_profile("steady")
 
 
 @pytest.fixture(scope="session", autouse=True)

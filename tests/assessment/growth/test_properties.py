@@ -22,7 +22,7 @@ cases = given(
     m=st.floats(2.0, 4.0),
     threshold=st.sampled_from([0.0, 3.0, 6.0]),
 )
-few = settings(max_examples=20, deadline=None)
+few = settings(max_examples=6, deadline=None)
 
 
 def life(x0, blocks, law, peak=1.0, toughness=100.0):
