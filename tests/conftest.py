@@ -1,7 +1,12 @@
 """What every test shares: the triggers lifted around each flush. The data folder: own_data.py."""
 
 import pytest
+from django.conf import settings as django_settings
 from hypothesis import settings
+
+# The real hasher is slow on purpose, eight times a test; what it is set to has its own test.
+REAL_HASHERS = django_settings.PASSWORD_HASHERS
+django_settings.PASSWORD_HASHERS = ["django.contrib.auth.hashers.MD5PasswordHasher"]
 
 # The same examples at each run: a check that fails does so for everyone, and none is timed.
 settings.register_profile("steady", derandomize=True, deadline=None)
