@@ -7,7 +7,7 @@ made only where it is missing or differs, so installing twice is harmless.
 from typing import Any
 
 from django.apps import apps
-from django.db import connections
+from django.db import connections, transaction
 from django.db.backends.base.base import BaseDatabaseWrapper
 from django.db.models import Model
 
@@ -104,7 +104,8 @@ def install(using: str = "default", **kwargs: Any) -> None:
     connection = connections[using]
     tables = set(connection.introspection.table_names())
     found = present(connection)
-    with connection.cursor() as cursor:
+    # One transaction: all of them or none, and one wait for the disk.
+    with transaction.atomic(using=using), connection.cursor() as cursor:
         if connection.vendor == "postgresql":
             cursor.execute(
                 f"CREATE OR REPLACE FUNCTION {FUNCTION}() RETURNS trigger "
@@ -137,7 +138,7 @@ def remove(using: str = "default") -> None:
     """Lift every trigger. For the tests' flush, and for the tests that tamper; nothing else."""
     connection = connections[using]
     found = present(connection)
-    with connection.cursor() as cursor:
+    with transaction.atomic(using=using), connection.cursor() as cursor:
         for name in expected(connection):
             if name in found:
                 _drop(cursor, connection, name, name.rsplit("_no_", 1)[0])
