@@ -1,7 +1,8 @@
 """Which steps need two people and stated grounds, and who may not be the second."""
 
+from logbook.cases import rows
 from logbook.errors import not_permitted
-from logbook.models import Assessment, Disposition, Finding, Person, Verdict, strictness
+from logbook.models import Assessment, Disposition, Person, Verdict, strictness
 
 LEAVING = frozenset({Verdict.REPAIR, Verdict.REFER, Verdict.WITHDRAW, Verdict.RESTRICT})
 
@@ -13,10 +14,7 @@ def eases(verdict: str, standing_verdict: str) -> bool:
 
 def loggers_of(assessment: Assessment) -> set[int]:
     """Who wrote the looks that the verdict rests on."""
-    rows = Finding.objects.filter(location=assessment.location, strike_out__isnull=True)
-    if assessment.crack_id is not None:
-        rows = rows.filter(crack=assessment.crack)
-    newest = rows.order_by("-inspection__found_on", "-leaf__index").first()
+    newest = rows.last_look(assessment.location, assessment.crack)
     return set() if newest is None else {newest.inspection.author_id}
 
 

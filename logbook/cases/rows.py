@@ -12,6 +12,7 @@ from logbook.models import (
     Location,
     Measurement,
     Repair,
+    What,
 )
 
 
@@ -59,8 +60,13 @@ def new_start(crack: Crack) -> Repair | None:
 
 
 def last_look(location: Location, crack: Crack | None) -> Finding | None:
-    """The newest finding that says something about this place or crack and was not struck out."""
-    rows = Finding.objects.filter(location=location, strike_out__isnull=True)
+    """The newest finding that says something about this place or crack and was not struck out.
+
+    Where nobody could look nothing new is known: the look before it counts, with its date.
+    """
+    rows = Finding.objects.filter(location=location, strike_out__isnull=True).exclude(
+        what=What.COULD_NOT_LOOK
+    )
     rows = rows.filter(crack=crack) if crack is not None else rows.filter(crack__isnull=True)
     return (
         rows.select_related("inspection", "leaf")
