@@ -3,6 +3,8 @@
 import json
 from decimal import Decimal
 
+from django.db.models import QuerySet
+
 from logbook import clock
 from logbook.cases import rows
 from logbook.entry import Known, KnownCrack, KnownLocation
@@ -31,9 +33,16 @@ def known_of(component: Component, before: Inspection | None = None) -> Known:
         },
         cracks={
             crack.number: _crack(crack, bodies.get(crack.location_id), before)
-            for crack in component.cracks.all()
+            for crack in _cracks(component, before)
         },
     )
+
+
+def _cracks(component: Component, before: Inspection | None) -> QuerySet[Crack]:
+    """Cracks that had been found by then."""
+    if before is None:
+        return component.cracks.all()
+    return component.cracks.filter(findings__leaf__index__lt=before.leaf.index).distinct()
 
 
 def adopted_body(location: Location) -> dict[str, object] | None:
@@ -66,7 +75,8 @@ def _crack(crack: Crack, body: dict[str, object] | None, before: Inspection | No
     return KnownCrack(
         number=crack.number,
         location=crack.location_id,
-        closed=crack.closed_at is not None,
+        closed=crack.closed_at is not None
+        and (before is None or crack.closed_at <= before.in_book_at),
         depth_mm=last.depth_mm if last else None,
         length_mm=last.length_mm if last else None,
         depth_sd_mm=_number(sizing.get("depth_sd_mm")),

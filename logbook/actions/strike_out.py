@@ -7,6 +7,7 @@ from django.db import IntegrityError, transaction
 
 from logbook import access, clock
 from logbook.actions import ask, standing
+from logbook.entry.inspection import TOO_LARGE_MM
 from logbook.errors import conflict, invalid
 from logbook.journal import append
 from logbook.models import Component, DepthBasis, Finding, Measurement, Person, StrikeOut, What
@@ -89,6 +90,8 @@ def _check_sizes(depth_basis: str, depth_mm: Any, length_mm: Any) -> None:
     for name, value in (("depth_mm", depth_mm), ("length_mm", length_mm)):
         if value is not None and value <= 0:
             wrong[name] = ["A crack has a size above 0."]
+        elif value is not None and value >= TOO_LARGE_MM:
+            wrong[name] = ["No crack is a kilometre long. Check the decimal point."]
     if wrong:
         raise invalid("The right size is not complete yet.", wrong)
 

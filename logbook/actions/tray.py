@@ -21,17 +21,20 @@ def keep_in_tray(
     by: Person, component: Component, key: str, content: Mapping[str, Any], refusal: Refusal
 ) -> TrayItem:
     """Keep a sent entry that cannot be written, with the reason. Twice the same is kept once."""
-    text = json.dumps(content, sort_keys=True, ensure_ascii=False, default=str)
+    text = _storable(json.dumps(content, sort_keys=True, ensure_ascii=False, default=str))
+    key = _storable(key.replace("\x00", " "))[:80]
     digest = sha256(text.encode()).hexdigest()
-    there = TrayItem.objects.filter(key=key, content_digest=digest).first()
-    if there is not None:
-        return there
     act = uuid.uuid4()
     with transaction.atomic():
+        # Sent twice at once, the second waits here for the first.
+        Component.objects.select_for_update().get(pk=component.pk)
+        there = TrayItem.objects.filter(key=key, content_digest=digest).first()
+        if there is not None:
+            return there
         item = TrayItem.objects.create(
             leaf_id=act,
             component=component,
-            key=key[:80],
+            key=key,
             content=text,
             content_digest=digest,
             why=canonical.text(refusal.as_problem()),
@@ -40,12 +43,17 @@ def keep_in_tray(
         )
         append(
             KEPT,
-            {"item": item.pk, "key": key[:80], "content_digest": digest, "why": item.why},
+            {"item": item.pk, "key": key, "content_digest": digest, "why": item.why},
             act=act,
             by=by,
             site=component.site,
         )
     return item
+
+
+def _storable(text: str) -> str:
+    """Half a surrogate pair, which no database takes, is kept by its escape."""
+    return text.encode("utf-8", "backslashreplace").decode()
 
 
 def settle_tray(by: Person, item_pk: Any, how: str) -> TraySettled:

@@ -80,6 +80,22 @@ def _check_pairs(body: dict[str, Any]) -> None:
                 "Some of this has no source.",
                 {name: [f"Give {', '.join(sorted(keys))}; the source says where it comes from."]},
             )
-    for name in ("sizing", "detection"):
-        if not isinstance(body.get(name, {}), dict):
+    ratio = body.get("depth_ratio")
+    if ratio is not None and not _is_ratio(ratio["value"]):
+        raise invalid(
+            "A depth cannot be reckoned with this.", {"depth_ratio": ["Give a number above 0."]}
+        )
+    for name, texts in (("sizing", True), ("detection", False)):
+        by_method = body.get(name, {})
+        if not isinstance(by_method, dict):
             raise invalid("Give these by method.", {name: ["One entry a method."]})
+        for method, said in by_method.items():
+            if not isinstance(said, dict) and not (texts and isinstance(said, str)):
+                raise invalid(
+                    "Give these by method.", {f"{name}.{method}": ["Give its named values."]}
+                )
+
+
+def _is_ratio(value: Any) -> bool:
+    number = isinstance(value, int | Decimal) and not isinstance(value, bool)
+    return number and Decimal(value).is_finite() and value > 0

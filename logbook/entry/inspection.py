@@ -22,6 +22,8 @@ MOST_FINDINGS = 200
 MOST_PHOTOS = 20
 # A size this many times the last one (or one over it) looks like a slipped decimal point.
 SLIPPED = Decimal(5)
+# No part is a kilometre long, and the book has no room for more digits.
+TOO_LARGE_MM = Decimal(1_000_000)
 NEW = "new"
 
 
@@ -246,7 +248,9 @@ def _crack(
         else None
     )
     if found is None or found.location != location:
-        r.complain("crack", f"There is no crack {given} at this place. Choose one, or “new”.")
+        r.complain(
+            "crack", f"There is no crack {text.quoted(given)} at this place. Choose one, or “new”."
+        )
         return None, None
     if found.closed:
         r.complain("crack", f"Crack {given} was closed. If one opened here again, it is a new one.")
@@ -270,6 +274,8 @@ def _sizes(r: _Reader, place: KnownLocation | None, last: KnownCrack | None) -> 
     for name, value in (("depth_mm", depth), ("length_mm", length)):
         if value is not None and value <= 0:
             r.complain(name, "A crack has a size above 0.")
+        elif value is not None and value >= TOO_LARGE_MM:
+            r.complain(name, "No crack is a kilometre long. Check the decimal point.")
     why_smaller = r.line("why_smaller", 500, None)
     _check_room(r, place, depth, length)
     if last is not None and not r.complaints:

@@ -13,15 +13,24 @@ class Unreadable(ValueError):
     """The sentence that stands beside the field."""
 
 
+def quoted(text: object) -> str:
+    """What was written, short and printable, to be named in a complaint."""
+    return str(text)[:40].encode("utf-8", "replace").decode()
+
+
 def decimal(text: object, *, places: int = 3) -> Decimal:
     """A number as typed, exact. Comma and point both read; a sign of thousands does not."""
     if isinstance(text, bool) or not isinstance(text, str | int | float | Decimal):
         raise Unreadable("Write a number, such as 8.4.")
     bare = SPACES.sub("", str(text))
     if "." in bare and "," in bare:
-        raise Unreadable(f'"{text}" has both comma and point. Write it without a thousands sign.')
+        raise Unreadable(
+            f'"{quoted(text)}" has both comma and point. Write it without a thousands sign.'
+        )
     if not NUMBER.match(bare):
-        raise Unreadable(f'"{text}" is not a number. Write it in digits, such as 8.4 or 8,4.')
+        raise Unreadable(
+            f'"{quoted(text)}" is not a number. Write it in digits, such as 8.4 or 8,4.'
+        )
     value = Decimal(bare.replace(",", "."))
     if -int(value.as_tuple().exponent) > places:
         raise Unreadable(f"Write at most {places} digits behind the decimal sign.")
@@ -46,6 +55,8 @@ def moment(text: object) -> datetime.datetime:
         raise Unreadable("Write the time as 2026-05-04T09:55:00+02:00.") from None
     if value.tzinfo is None:
         raise Unreadable("The time needs its offset, such as +02:00.")
+    if not 1900 <= value.year < 2200:
+        raise Unreadable(f"The year {value.year} cannot be right. Check the clock of the tablet.")
     return value
 
 
@@ -65,6 +76,6 @@ def line(text: object, *, longest: int) -> str:
     said = text.strip()
     if len(said) > longest:
         raise Unreadable(f"Write at most {longest} characters; there are {len(said)}.")
-    if any(ord(c) < 32 and c not in "\n\r\t" for c in said):
+    if any(ord(c) < 32 and c not in "\n\r\t" or 0xD800 <= ord(c) <= 0xDFFF for c in said):
         raise Unreadable("There are characters here that cannot be printed.")
     return said

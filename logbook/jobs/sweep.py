@@ -5,14 +5,17 @@ harmless, since the proposal is written once.
 """
 
 import datetime
+import logging
 import threading
 
-from django.db import connection
+from django.db import DatabaseError, connection
 from django_tasks_db.models import DBTaskResult
 
 from logbook import clock
 from logbook.models import AssessmentAsked, Beat
 from logbook.records.issue import issue, outstanding
+
+log = logging.getLogger(__name__)
 
 BEAT_SECONDS = 5
 DEAD_SECONDS = 30
@@ -49,9 +52,19 @@ def enqueue_owed(older_than_seconds: float = OWED_SECONDS) -> int:
         .values_list("location_id", "crack_id")
         .distinct()
     )
+    waiting = _waiting(propose_one.module_path)
+    count = 0
     for location, crack in owed:
-        propose_one.enqueue(location, crack)
-    return len(owed)
+        if (location, crack) not in waiting:
+            propose_one.enqueue(location, crack)
+            count += 1
+    return count
+
+
+def _waiting(task_path: str) -> set[tuple[int, int | None]]:
+    """What is queued already, so that a long queue is not made longer at each sweep."""
+    rows = DBTaskResult.objects.filter(task_path=task_path, status__in=("READY", "RUNNING"))
+    return {tuple(args["args"]) for args in rows.values_list("args_kwargs", flat=True)}
 
 
 def issue_outstanding() -> int:
@@ -63,8 +76,11 @@ def issue_outstanding() -> int:
 
 
 class Heart(threading.Thread):
-    """Beats, releases and sweeps beside a worker until told to stop. An error that is not
-    swallowed here would stop the beat, and the worker would be taken for dead: so it does."""
+    """Beats, releases and sweeps beside a worker until told to stop.
+
+    A database that does not answer is logged and asked again at the next beat: a worker whose
+    heart had stopped would never sweep.
+    """
 
     def __init__(self, worker_id: str) -> None:
         super().__init__(daemon=True)
@@ -73,13 +89,18 @@ class Heart(threading.Thread):
 
     def run(self) -> None:
         rounds = 0
-        try:
-            while not self.stopped.wait(BEAT_SECONDS if rounds else 0):
-                beat(self.worker_id)
-                release_dead_tasks()
-                if rounds % 4 == 0:
-                    enqueue_owed()
-                    issue_outstanding()
-                rounds += 1
-        finally:
-            connection.close()
+        while not self.stopped.wait(BEAT_SECONDS if rounds else 0):
+            try:
+                self.round(sweep=rounds % 4 == 0)
+            except DatabaseError:
+                log.exception("the worker's heart missed a beat")
+            finally:
+                connection.close()
+            rounds += 1
+
+    def round(self, *, sweep: bool) -> None:
+        beat(self.worker_id)
+        release_dead_tasks()
+        if sweep:
+            enqueue_owed()
+            issue_outstanding()
