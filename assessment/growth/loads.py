@@ -7,12 +7,19 @@ from dataclasses import dataclass
 @dataclass(frozen=True)
 class CycleBlock:
     """ranges : load name to range in MPa (≥ 0). Either stress_ratio (below 1, of all loads) or
-    maxima (load name to the cycle's largest value, MPa). per_usage : cycles per unit of usage."""
+    maxima (load name to the cycle's largest value, MPa). per_usage : cycles per unit of usage.
+
+    Raises ValueError where neither or both of stress_ratio and maxima are given: none is assumed.
+    """
 
     ranges: Mapping[str, float]
     stress_ratio: float | None
     maxima: Mapping[str, float] | None
     per_usage: float
+
+    def __post_init__(self) -> None:
+        if (self.stress_ratio is None) == (self.maxima is None):
+            raise ValueError("a cycle block has either a stress ratio or maxima")
 
 
 def cycles_per_usage(blocks: Sequence[CycleBlock]) -> float:

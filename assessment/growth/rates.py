@@ -39,9 +39,9 @@ def drive_of(blocks: Sequence[CycleBlock]) -> Drive:
 
 
 def _upper(block: CycleBlock, name: str) -> float:
-    if block.maxima is not None:
-        return block.maxima.get(name, 0.0)
-    return block.ranges.get(name, 0.0) / (1.0 - (block.stress_ratio or 0.0))
+    if block.stress_ratio is not None:
+        return block.ranges.get(name, 0.0) / (1.0 - block.stress_ratio)
+    return 0.0 if block.maxima is None else block.maxima.get(name, 0.0)
 
 
 def k_by_load(kind: Kind, x: Floats, names: Sequence[str], body: Body) -> Floats:

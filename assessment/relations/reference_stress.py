@@ -115,29 +115,35 @@ def bar(membrane: Floats, bending: Floats, relative: Floats) -> Floats:
     full_area, elastic_modulus = np.pi / 4.0, np.pi / 32.0
     force = np.abs(membrane) * full_area
     moment = np.abs(bending * elastic_modulus + membrane * full_area * e)
-    return np.asarray(force / a + moment / z)
+    with np.errstate(divide="ignore"):
+        return np.asarray(force / a + moment / z)
 
 
 @cache
 def _cut_bar() -> tuple[Floats, Floats, Floats, Floats]:
     """Area, shift of the halving axis and plastic modulus of a bar of diameter 1 cut off at a
-    depth, by thin strips: 4,000 strips, exact to about 1e-6."""
-    strips = 4000
-    edges = np.linspace(-0.5, 0.5, strips + 1)
-    y = 0.5 * (edges[:-1] + edges[1:])
-    # Exact area of each strip of the circle, from the integral of the chord.
-    part = edges * np.sqrt(np.maximum(0.25 - edges**2, 0.0)) + 0.25 * np.arcsin(2.0 * edges)
-    strip = np.diff(part)
-    total = np.cumsum(strip)
-    moment = np.cumsum(strip * y)
-    depths = np.linspace(0.0, 0.98, 491)
-    rows = []
-    for depth in depths:
-        last = int(round((1.0 - depth) * strips)) - 1
-        half = int(np.searchsorted(total, total[last] / 2.0))
-        axis = y[half]
-        below = axis * total[half] - moment[half]
-        above = (moment[last] - moment[half]) - axis * (total[last] - total[half])
-        rows.append((total[last], -axis, below + above))
-    area, shift, modulus = np.array(rows).T
-    return depths, area, shift, modulus
+    depth, from closed forms at 4,001 depths; straight lines between them are exact to 2e-5 up to
+    a depth of 0.98. With nothing left the area and modulus are nil, and the stress is endless."""
+    depths = 0.5 * (1.0 - np.cos(np.linspace(0.0, np.pi, 4001)))
+    top = 0.5 - depths
+    area = _area_below(top)
+    # The axis that halves what is left, between the bottom and the cut: bisection to rounding.
+    low, high = np.full_like(top, -0.5), top
+    for _ in range(60):
+        axis = 0.5 * (low + high)
+        less = _area_below(axis) < 0.5 * area
+        low, high = np.where(less, axis, low), np.where(less, high, axis)
+    # The integral of |y - axis|, from ∫ y dA = -(2/3) (1/4 - y²)^(3/2).
+    modulus = (4.0 * _beside(axis) ** 1.5 - 2.0 * _beside(top) ** 1.5) / 3.0
+    return depths, area, -axis, modulus
+
+
+def _beside(y: Floats) -> Floats:
+    """1/4 - y²: the square of half the chord at height y."""
+    return np.maximum(0.25 - y**2, 0.0)
+
+
+def _area_below(y: Floats) -> Floats:
+    """Area of a circle of diameter 1 below the chord at height y, from -1/2 to 1/2."""
+    within = np.clip(2.0 * y, -1.0, 1.0)  # rounding alone leaves this interval
+    return np.asarray(y * np.sqrt(_beside(y)) + 0.25 * np.arcsin(within) + np.pi / 8.0)

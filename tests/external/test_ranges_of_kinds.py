@@ -1,0 +1,92 @@
+"""Each bound of each relation of each kind, left by a real crack: the kind itself must mark it.
+
+The list is made from the kinds, so that a new bound without a crack that leaves it fails here.
+"""
+
+import numpy as np
+import pytest
+
+from assessment import KINDS
+
+PLATE = {"width": 0.4, "thickness": 0.02}
+EDGE = PLATE | {"ends": "free"}
+CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
+
+
+def by_length(scale, body):
+    return lambda value: (np.array([value * scale]), body)
+
+
+def by_radius(value):
+    return np.array([0.004, 0.01]), CYLINDER | {"inner_radius": 0.02 / value}
+
+
+def long_and_shallow(value):
+    """a/c = 0.1: the bound on depth is 1.25 (0.1 + 0.6) = 0.875 of the wall."""
+    a = 0.02 * value * 1.25 * 0.7
+    return np.array([a, 10.0 * a]), PLATE | {"width": 4.0}
+
+
+# kind, symbol: the crack whose symbol has a value.
+CRACKS = {
+    ("plate-through-centre", "2a/W"): by_length(0.2, PLATE),
+    ("plate-through-edge", "a/W"): by_length(0.4, EDGE),
+    ("plate-through-edge", "ends"): lambda value: (
+        np.array([0.02]),
+        EDGE | {"ends": "held" if value > 0 else "free"},
+    ),
+    ("plate-surface", "a/c"): lambda value: (np.array([0.008 * value, 0.008]), PLATE),
+    ("plate-surface", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), PLATE),
+    ("plate-surface", "a/t ÷ 1.25(a/c + 0.6)"): long_and_shallow,
+    ("plate-surface", "2c/W"): lambda value: (np.array([0.005, 0.2 * value]), PLATE),
+    ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
+    ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
+    ("cylinder-axial-inside", "t/R"): by_radius,
+    ("bar-surface", "a/D"): by_length(0.06, {"diameter": 0.06}),
+}
+BOUNDS = [
+    (name, relation, bound, side)
+    for name, kind in KINDS.items()
+    for relation in kind.relations
+    for bound in relation.ranges
+    for side in ("low", "high")
+    # Whether ends are held has one side alone.
+    if getattr(bound, side) is not None and (bound.symbol, side) != ("ends", "low")
+]
+
+
+def words(bound):
+    name, relation, range_, side = bound
+    return f"{name}: {relation.relation}: {range_.symbol} {side}"
+
+
+@pytest.mark.parametrize("bound", BOUNDS, ids=words)
+def test_a_crack_just_outside_is_marked_by_its_kind(bound):
+    name, relation, range_, side = bound
+    away = -1e-9 if side == "low" else 1e-9
+    value = getattr(range_, side) + (away if range_.symbol != "ends" else 1.0)
+    x, body = CRACKS[name, range_.symbol](value)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        assert not np.all(KINDS[name].inside(x, body))
+        marks = KINDS[name].marks(x, body)
+    left = [mark for mark in marks if mark.relation == relation.relation]
+    assert range_.symbol in {mark.range.symbol for mark in left}
+    assert all(mark.sentence() for mark in left)
+
+
+@pytest.mark.parametrize("bound", BOUNDS, ids=words)
+def test_a_crack_just_inside_is_not_marked_for_that_bound(bound):
+    name, relation, range_, side = bound
+    inward = 1e-9 if side == "low" else -1e-9
+    value = getattr(range_, side) + (inward if range_.symbol != "ends" else 0.0)
+    if range_.low == range_.high:
+        value = range_.low
+    x, body = CRACKS[name, range_.symbol](value)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        marks = KINDS[name].marks(x, body)
+    assert (relation.relation, range_.symbol) not in {(m.relation, m.range.symbol) for m in marks}
+
+
+def test_every_kind_but_the_table_has_bounds():
+    """A table's bounds are its own first and last size (test_ranges.py)."""
+    assert {name for name, *_ in BOUNDS} == set(KINDS) - {"tabulated"}
