@@ -95,6 +95,9 @@ def test_a_place_is_marked_by_touching_the_picture(
     engineer.get_by_label("Picture of the part").set_input_files(picture)
     engineer.get_by_role("button", name="Use this picture").click()
     engineer.get_by_role("link", name="1 · Heel post").click()
+    # Until the picture is there, its button is only as wide as the words that stand for it.
+    engineer.wait_for_url(f"**/location/{book.heel.pk}/mark/")
+    engineer.wait_for_load_state("load")
     touched = engineer.locator("input[type=image]")
     box = touched.bounding_box()
     assert box is not None
