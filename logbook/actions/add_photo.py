@@ -118,6 +118,7 @@ def _decode(data: bytes) -> tuple[str, bytes, tuple[int, int]]:
 
 def keep(path: Path, data: bytes) -> None:
     """Write a file so that it is whole or not there: synced, renamed, its folder synced."""
+    made = not path.parent.exists()
     path.parent.mkdir(mode=0o700, parents=True, exist_ok=True)
     half = path.with_name(f".{path.name}.{uuid.uuid4().hex}")
     with open(os.open(half, os.O_WRONLY | os.O_CREAT | os.O_EXCL, 0o600), "wb") as f:
@@ -125,7 +126,14 @@ def keep(path: Path, data: bytes) -> None:
         f.flush()
         os.fsync(f.fileno())
     half.replace(path)
-    folder = os.open(path.parent, os.O_RDONLY)
+    _sync_folder(path.parent)
+    if made:  # a folder's own name stands in the one above it
+        _sync_folder(path.parent.parent)
+        _sync_folder(path.parent.parent.parent)
+
+
+def _sync_folder(path: Path) -> None:
+    folder = os.open(path, os.O_RDONLY)
     try:
         os.fsync(folder)
     finally:

@@ -1,24 +1,25 @@
-"""After an entry is in the book: its verdict at once, if it can be had within a second."""
+"""After an act is in the book: the verdict it asks for at once, if it can be had in a second."""
 
 import time
+import uuid
 
 from django.conf import settings
 
 from logbook.actions.propose import propose
 from logbook.jobs.tasks import propose_one
-from logbook.models import AssessmentAsked, Inspection
+from logbook.models import AssessmentAsked
 
 
-def answer_now(inspection: Inspection) -> bool:
-    """Work out what this entry asked, one place after the other, while there is time; what is
+def answer_now(act: uuid.UUID) -> bool:
+    """Work out what this act asked, one place after the other, while there is time; what is
     left goes to the worker. True where everything is answered.
 
-    The entry is committed before this is called: if the process dies here, the sweep finds what
+    The act is committed before this is called: if the process dies here, the sweep finds what
     is owed.
     """
     deadline = time.monotonic() + settings.VERDICT_WAIT_SECONDS
     owed = list(
-        AssessmentAsked.objects.filter(because_act=inspection.leaf_id)
+        AssessmentAsked.objects.filter(because_act=act)
         .order_by("pk")
         .values_list("location_id", "crack_id")
     )

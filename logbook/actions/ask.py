@@ -4,7 +4,7 @@ import uuid
 
 from logbook import clock
 from logbook.actions import standing
-from logbook.models import AssessmentAsked, Crack, Location
+from logbook.models import AssessmentAsked, Component, Crack, Location, Standing
 
 
 def for_assessment(location: Location, crack: Crack | None, because: uuid.UUID) -> None:
@@ -16,3 +16,12 @@ def for_assessment(location: Location, crack: Crack | None, because: uuid.UUID) 
     standing.refresh(location, crack)
     if crack is not None:
         standing.refresh(location, None)
+
+
+def for_all_places(component: Component, because: uuid.UUID) -> None:
+    """What counts for the whole component, its counter say, asks for every place that stands."""
+    rows = Standing.objects.filter(location__component=component).select_related(
+        "location__component__site", "crack"
+    )
+    for row in list(rows):
+        for_assessment(row.location, row.crack, because)

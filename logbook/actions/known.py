@@ -13,7 +13,7 @@ from logbook.models import Component, Crack, Inspection, Location
 
 def known_of(component: Component, before: Inspection | None = None) -> Known:
     """The facts as they stand, or as they stood when an earlier entry was written."""
-    looks = Inspection.objects.filter(component=component)
+    looks = rows.looks_that_count(component)
     if before is not None:
         looks = looks.filter(leaf__index__lt=before.leaf.index)
     last = looks.order_by("-found_on", "-leaf__index").values_list("found_on", "counter").first()

@@ -125,6 +125,8 @@ def _write(by: Person, component: Component, draft: InspectionDraft, digest: str
         )
         for finding in findings:
             ask.for_assessment(finding.location, finding.crack, act)
+        if inspection.counter_replaced_why:
+            ask.for_all_places(component, act)
         standing.refresh_counter(component)
     return inspection
 

@@ -21,6 +21,7 @@ import assessment
 from logbook import clock
 from logbook.actions import standing
 from logbook.actions.working_day import on_or_before
+from logbook.cases import rows
 from logbook.cases.freeze import FrozenCase, freeze
 from logbook.cases.text import digest
 from logbook.journal import append
@@ -45,6 +46,7 @@ class _Answer:
     limit: str = ""
     stop_depth_mm: float | None = None
     stop_length_mm: float | None = None
+    gave_up: bool = False
 
 
 def propose(location_id: int, crack_id: int | None) -> Assessment | None:
@@ -59,8 +61,9 @@ def propose(location_id: int, crack_id: int | None) -> Assessment | None:
         asked = list(AssessmentAsked.objects.filter(location=location, crack=crack).order_by("pk"))
         if not asked:
             return None
-        frozen = freeze(location, crack)
+        frozen = _nothing_frozen(location)
         try:
+            frozen = freeze(location, crack)
             answer = _compute(frozen, location)
         except Exception as error:  # noqa: BLE001 (kept, shown and tried again: never swallowed)
             log.exception("assessment of location %s crack %s failed", location_id, crack_id)
@@ -71,6 +74,19 @@ def propose(location_id: int, crack_id: int | None) -> Assessment | None:
         if written is not None:
             return written
     return None  # the book keeps changing under us; the sweep comes back
+
+
+def _nothing_frozen(location: Location) -> FrozenCase:
+    return FrozenCase(rows.adopted_basis(location), "", "", ())
+
+
+def _still_reads(
+    location: Location, crack: Crack | None, frozen: FrozenCase, answer: _Answer
+) -> bool:
+    """Does the book still ask what was answered? What could not even be frozen is referred, and
+    an entry that comes beside it asks again."""
+    could_not = answer.gave_up and not frozen.text
+    return could_not or freeze(location, crack) == frozen
 
 
 def _failed(asked: list[AssessmentAsked], error: Exception) -> bool:
@@ -84,6 +100,7 @@ def _gave_up(error: Exception) -> _Answer:
     return _Answer(
         Verdict.REFER,
         [f"The computation did not finish ({type(error).__name__}). An engineer decides."],
+        gave_up=True,
     )
 
 
@@ -146,7 +163,7 @@ def _write(
         asked = list(AssessmentAsked.objects.filter(location=location, crack=crack).order_by("pk"))
         if not asked:
             return None  # answered beside us
-        if freeze(location, crack) != frozen:
+        if not _still_reads(location, crack, frozen, answer):
             return None
         made = Assessment.objects.create(
             leaf_id=act,

@@ -26,7 +26,6 @@ from logbook.models import (
     Component,
     Crack,
     Disposition,
-    Inspection,
     Location,
     Repair,
     Site,
@@ -128,10 +127,8 @@ def latest_disposition(location: Location, crack: Crack | None) -> Disposition |
 
 
 def last_counter(component: Component) -> Decimal | None:
-    """The newest reading on the component's counter; a struck-out look still read the counter."""
-    found = (
-        Inspection.objects.filter(component=component).order_by("-found_on", "-leaf__index").first()
-    )
+    """The newest reading on the component's counter of a visit that still counts."""
+    found = rows_of_case.looks_that_count(component).order_by("-found_on", "-leaf__index").first()
     return None if found is None else found.counter
 
 
@@ -192,10 +189,15 @@ def _signed(a: Assessment, d: Disposition) -> _What:
     deferral = d.deferrals.order_by("-leaf__index").first()
     due_on = deferral.new_on if deferral is not None else d.until_on
     due_at = deferral.new_at if deferral is not None and deferral.new_at else d.until_at
+    until_at = d.until_at
+    if rows_of_case.on_an_older_counter(d.location.component, d.leaf.index):
+        # A reading of the counter that was taken out says nothing on the new one: the newer
+        # proposal's reading binds, or without one its verdict.
+        due_at = until_at = None
     confirmed = hasattr(d, "restriction_confirmed")
     newer = a.leaf.index > d.leaf.index
     stricter = newer and strictness(a.verdict) > strictness(d.verdict)
-    earlier = newer and (_before(a.until_on, d.until_on) or _before(a.until_at, d.until_at))
+    earlier = newer and (_before(a.until_on, d.until_on) or _before(a.until_at, until_at))
     if not (stricter or earlier):
         return _What(
             State.IN_FORCE,

@@ -1,58 +1,46 @@
 """Striking out: the finding stays readable with its reason, and counts no more."""
 
 import uuid
+from collections.abc import Mapping
 from typing import Any
 
 from django.db import IntegrityError, transaction
 
 from logbook import access, clock
 from logbook.actions import ask, standing
-from logbook.entry.inspection import TOO_LARGE_MM
+from logbook.actions.known import known_of
+from logbook.entry import Sizes, read_correction
 from logbook.errors import conflict, invalid
 from logbook.journal import append
-from logbook.models import Component, DepthBasis, Finding, Measurement, Person, StrikeOut, What
+from logbook.models import Component, Finding, Inspection, Measurement, Person, StrikeOut, What
 
 KIND = "strike-out"
 
 
 def strike_out(
-    by: Person,
-    finding_pk: Any,
-    reason: str,
-    *,
-    depth_basis: str | None = None,
-    depth_mm: Any = None,
-    length_mm: Any = None,
-    typed: str = "",
+    by: Person, finding_pk: Any, reason: str, right: Mapping[str, Any] | None = None
 ) -> StrikeOut:
-    """Strike a finding out, and where new sizes are given write the right ones in its place.
+    """Strike a finding out, and where the right sizes are given write them in its place.
 
-    The new finding names the old one; both stand in the book. depth_mm and length_mm are Decimals
-    already read (logbook.entry.text).
+    The new finding names the old one; both stand in the book. ``right`` is read as a size of an
+    entry is (logbook/entry): against the wall, and against the size before it. With the last
+    finding of a visit its counter reading goes too.
     """
     finding = access.finding_for(by, finding_pk, "log")
     if not reason.strip():
         raise invalid("Say why it is struck out.", {"reason": ["Say why it is struck out."]})
-    new = depth_basis is not None
-    if new and finding.what != What.CRACK:
-        raise invalid("Only a size can be corrected.", {"depth_basis": ["Leave the sizes empty."]})
-    if new:
-        _check_sizes(str(depth_basis), depth_mm, length_mm)
+    sizes = None if right is None else _read(finding, right)
     act = uuid.uuid4()
     component = finding.inspection.component
     try:
         with transaction.atomic():
             Component.objects.select_for_update().get(pk=component.pk)
-            right = (
-                _right(finding, act, depth_basis, depth_mm, length_mm, typed)
-                if depth_basis is not None
-                else None
-            )
+            new = None if sizes is None else _write(finding, act, sizes)
             made = StrikeOut.objects.create(
                 leaf_id=act,
                 finding=finding,
                 reason=reason.strip(),
-                replaced_by=right,
+                replaced_by=new,
                 by=by,
                 at=clock.now(),
             )
@@ -62,11 +50,8 @@ def strike_out(
                     "strike_out": made.pk,
                     "finding": finding.pk,
                     "reason": reason.strip(),
-                    "replaced_by": right.pk if right else None,
-                    "depth_basis": depth_basis,
-                    "depth_mm": depth_mm,
-                    "length_mm": length_mm,
-                    "typed": typed,
+                    "replaced_by": new.pk if new else None,
+                    "right": None if sizes is None else dict(sizes.__dict__),
                 },
                 act=act,
                 by=by,
@@ -74,52 +59,36 @@ def strike_out(
                 because_of=[finding.leaf_id],
             )
             _ask_again(finding, act)
+            _take_back_reading(finding.inspection, act)
     except IntegrityError:
         raise conflict("struck", "This was struck out already.") from None
     return made
 
 
-def _check_sizes(depth_basis: str, depth_mm: Any, length_mm: Any) -> None:
-    wrong: dict[str, list[str]] = {}
-    if depth_basis not in DepthBasis.values:
-        wrong["depth_basis"] = ["Say how the depth is known."]
-    if (depth_basis == DepthBasis.NOT_MEASURED) != (depth_mm is None):
-        wrong["depth_mm"] = ["Type the depth, or say that it was not measured."]
-    if depth_mm is None and length_mm is None:
-        wrong["length_mm"] = ["Type the length along the surface."]
-    for name, value in (("depth_mm", depth_mm), ("length_mm", length_mm)):
-        if value is not None and value <= 0:
-            wrong[name] = ["A crack has a size above 0."]
-        elif value is not None and value >= TOO_LARGE_MM:
-            wrong[name] = ["No crack is a kilometre long. Check the decimal point."]
-    if wrong:
-        raise invalid("The right size is not complete yet.", wrong)
+def _read(finding: Finding, right: Mapping[str, Any]) -> Sizes:
+    crack = finding.crack
+    if hasattr(finding, "strike_out"):
+        raise conflict("struck", "This was struck out already.")
+    if crack is None or finding.what != What.CRACK:
+        raise invalid("Only a size can be corrected.", {"depth_basis": ["Leave the sizes empty."]})
+    before = known_of(finding.inspection.component, before=finding.inspection)
+    return read_correction(
+        right, before.locations.get(finding.location_id), before.cracks.get(crack.number)
+    )
 
 
-def _right(
-    wrong: Finding, act: uuid.UUID, depth_basis: str, depth: Any, length: Any, typed: str
-) -> Finding:
-    crack = wrong.crack
-    if crack is None:
-        raise invalid("Only a size can be corrected.", {"depth_basis": ["Leave them empty."]})
+def _write(wrong: Finding, act: uuid.UUID, sizes: Sizes) -> Finding:
+    assert wrong.crack is not None, "sizes were read for a crack"
     made = Finding.objects.create(
         leaf_id=act,
         inspection=wrong.inspection,
         location=wrong.location,
         what=What.CRACK,
+        part_not_seen=wrong.part_not_seen,
         remarks=wrong.remarks,
         crack=wrong.crack,
     )
-    Measurement.objects.create(
-        leaf_id=act,
-        finding=made,
-        crack=crack,
-        depth_basis=depth_basis,
-        depth_mm=depth,
-        length_mm=length,
-        why_smaller="corrects a size that was struck out",
-        typed=typed or f"depth {depth} mm × length {length} mm",
-    )
+    Measurement.objects.create(leaf_id=act, finding=made, crack=wrong.crack, **sizes.__dict__)
     return made
 
 
@@ -127,3 +96,13 @@ def _ask_again(finding: Finding, act: uuid.UUID) -> None:
     """A crack without any finding left stands as it is in the book, and is referred."""
     ask.for_assessment(finding.location, finding.crack, act)
     standing.refresh(finding.location, finding.crack)
+
+
+def _take_back_reading(inspection: Inspection, act: uuid.UUID) -> None:
+    """Nothing of the visit stands any more: its counter reading counts no more either, and if it
+    had found the counter replaced, every place is assessed anew."""
+    if inspection.findings.filter(strike_out__isnull=True).exists():
+        return
+    if inspection.counter_replaced_why:
+        ask.for_all_places(inspection.component, act)
+    standing.refresh_counter(inspection.component)

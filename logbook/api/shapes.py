@@ -167,7 +167,7 @@ class InspectionShape(serializers.ModelSerializer[Inspection]):
         fields = ("id", "entry_number", "key", "component", "found_on", "late_why", "written_at",
                   "in_book_at", "counter", "counter_replaced_why", "method", "procedure",
                   "procedure_revision", "instrument", "calibration_valid_until", "surface",
-                  "coverage", "inspector_name", "qualification_level",
+                  "coverage", "fell_short", "inspector_name", "qualification_level",
                   "qualification_valid_until", "findings")  # fmt: skip
 
 
@@ -232,6 +232,7 @@ class InspectionSent(serializers.Serializer[Any]):
     calibration_valid_until = serializers.DateField(required=False)
     surface = serializers.CharField()
     coverage = serializers.CharField()
+    fell_short = serializers.CharField(required=False, allow_blank=True)
     inspector_name = serializers.CharField()
     qualification_level = serializers.CharField()
     qualification_valid_until = serializers.DateField()
@@ -252,6 +253,8 @@ class StrikeOutSent(serializers.Serializer[Any]):
     depth_basis = serializers.ChoiceField(DepthBasis.choices, required=False)
     depth_mm = serializers.CharField(required=False)
     length_mm = serializers.CharField(required=False)
+    why_smaller = serializers.CharField(required=False)
+    confirm_unlikely = serializers.BooleanField(required=False)
 
 
 class StrikeOutAnswer(serializers.Serializer[Any]):

@@ -166,7 +166,7 @@ class Inspections(generics.ListAPIView[Inspection]):
             return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
         before = Inspection.objects.filter(key=draft.key).exists()
         inspection = log_inspection(_who(request), draft)
-        answer_now(inspection)
+        answer_now(inspection.leaf_id)
         return _answer(inspection, 200 if before else 201)
 
 
@@ -221,21 +221,9 @@ class StrikeOuts(APIView):
     def post(self, request: Request, pk: int) -> Response:
         """Strike a finding out, and where sizes are given write the right ones in its place."""
         sent = request.data if isinstance(request.data, Mapping) else {}
-        sizes: dict[str, Any] = {}
-        for name in ("depth_mm", "length_mm"):
-            if sent.get(name) not in (None, ""):
-                try:
-                    sizes[name] = text.decimal(sent[name])
-                except text.Unreadable as said:
-                    raise invalid("A size cannot be read.", {name: [str(said)]}) from None
-        basis = sent.get("depth_basis")
-        made = strike_out(
-            _who(request),
-            pk,
-            str(sent.get("reason", "")),
-            depth_basis=None if basis is None else str(basis),
-            **sizes,
-        )
+        right = {name: value for name, value in sent.items() if name != "reason"}
+        made = strike_out(_who(request), pk, str(sent.get("reason", "")), right or None)
+        answer_now(made.leaf_id)
         answer = {"finding": pk, "replaced_by": made.replaced_by_id, "reason": made.reason}
         return Response(answer, status=201)
 

@@ -14,6 +14,7 @@ from logbook import clock
 from logbook.cases import rows, text
 from logbook.models import (
     Basis,
+    Component,
     Crack,
     DepthBasis,
     Disposition,
@@ -21,6 +22,7 @@ from logbook.models import (
     Inspection,
     Location,
     Measurement,
+    Repair,
     What,
 )
 
@@ -49,15 +51,40 @@ def freeze(location: Location, crack: Crack | None) -> FrozenCase:
         return _none(basis, "Nobody has looked here yet.")
     try:
         part = _found(body, crack, look) if crack is not None else _not_found(body, look)
+        seen = part.get("seen", _seen_at(look.inspection))
+        _same_counter(location.component, seen)
     except _NoCase as why:
         return _none(basis, str(why))
-    case = _case(body, part, location, crack, look)
+    case = _case(body, part, location, crack, look, seen)
     made = text.exact(case)
     return FrozenCase(basis, made, text.digest(made), ())
 
 
 class _NoCase(Exception):
     """Why no question can be asked."""
+
+
+@dataclass(frozen=True)
+class _Seen:
+    """When the size of the case was last known: date, counter, and the leaf that says so."""
+
+    on: datetime.date
+    at: Decimal
+    leaf: int
+
+
+def _seen_at(inspection: Inspection) -> _Seen:
+    return _Seen(inspection.found_on, inspection.counter, inspection.leaf.index)
+
+
+def _same_counter(component: Component, seen: _Seen) -> None:
+    """Usage since the look is the difference of two readings of one counter, or nobody knows it."""
+    replaced = rows.counter_replaced(component)
+    if replaced is not None and not rows.on_this_counter(seen.on, seen.leaf, replaced):
+        raise _NoCase(
+            f"The counter was found replaced on {_day(replaced.found_on)}, after the last look "
+            "here: how much the part was used since is not known. Look again."
+        )
 
 
 def _none(basis: Basis | None, *missing: str) -> FrozenCase:
@@ -81,12 +108,13 @@ def _case(
     location: Location,
     crack: Crack | None,
     look: Finding,
+    seen: _Seen,
 ) -> dict[str, Any]:
     component, inspection = location.component, look.inspection
-    readings = [r for r in rows.readings(component) if r[0] <= inspection.found_on]
+    readings = [r for r in rows.readings(component) if r[0] <= seen.on]
     case: dict[str, Any] = {
         "case": 1,
-        "as_of": _as_of(location, inspection),
+        "as_of": _as_of(location, seen),
         "crack": part["crack"],
         "body": body.get("body", {}),
         "material": body.get("material", {}),
@@ -94,14 +122,16 @@ def _case(
         "usage": {
             "unit": component.counter_unit,
             "per_day": component.per_day,
-            "at": inspection.counter,
-            "on": inspection.found_on,
+            "at": seen.at,
+            "on": seen.on,
         },
         "criteria": body.get("criteria", {}),
         "seed": 0,
     }
-    if len(readings) > 1:
-        case["usage"]["readings"] = [[on, at] for on, at in readings[:-1]]
+    # The newest reading of the look itself is said above.
+    earlier = [[on, at] for on, at in readings if (on, at) < (seen.on, seen.at)]
+    if earlier:
+        case["usage"]["readings"] = earlier
     for name in ("owner", "uncertainty"):
         if name in body:
             case[name] = body[name]
@@ -114,7 +144,7 @@ def _case(
     previous = _previous(location, crack)
     if previous is not None:
         case["previous"] = previous
-    shortfalls = _shortfalls(inspection, look)
+    shortfalls = _shortfalls(inspection, look) + _welded(location)
     if shortfalls:
         case["look"] = {"shortfalls": shortfalls}
     return case
@@ -125,12 +155,12 @@ def _loading(body: dict[str, Any], kind: str) -> dict[str, Any]:
     return _through_loading(loading) if kind != body["kind"] else loading
 
 
-def _as_of(location: Location, inspection: Inspection) -> dict[str, Any]:
+def _as_of(location: Location, seen: _Seen) -> dict[str, Any]:
     """Today and the newest reading: past the date in force, the answer is another."""
     today = clock.today(location.component.site.time_zone)
     newest = rows.readings(location.component)
-    at = max([inspection.counter, *(r[1] for r in newest[-1:])])
-    return {"on": max(today, inspection.found_on), "at": at}
+    at = max([seen.at, *(r[1] for r in newest[-1:])])
+    return {"on": max(today, seen.on), "at": at}
 
 
 def _without_source(section: dict[str, Any]) -> dict[str, Any]:
@@ -145,14 +175,44 @@ def _found(body: dict[str, Any], crack: Crack, look: Finding) -> dict[str, Any]:
         start = rows.new_start(crack)
         if start is None:
             raise _NoCase("No size of this crack counts any more: measure it again.")
-        raise _NoCase(
-            "The crack goes on with a new start after its repair, and nobody has looked since."
-        )
+        return {
+            "crack": _new_start(body, crack, start),
+            "seen": _Seen(start.done_on, start.counter, start.leaf.index),
+        }
     last = sizes[-1]
     return {
         "crack": _crack(body, last),
         "history": _history(body, crack, sizes[:-1]),
     }
+
+
+def _new_start(body: dict[str, Any], crack: Crack, start: Repair) -> dict[str, Any]:
+    """After a repair the crack goes on with the size that the inspection after could have missed:
+    an assumption with its source, never a measured depth."""
+    missed = Measurement(
+        crack=crack,
+        depth_basis=DepthBasis.NOT_MEASURED
+        if start.start_depth_mm is None
+        else DepthBasis.MEASURED,
+        depth_mm=start.start_depth_mm,
+        length_mm=start.start_length_mm,
+    )
+    kind = _kind_of(body, missed)
+    missed_words = f"what the inspection after the repair could have missed, {start.start_source}"
+    made: dict[str, Any] = {"kind": kind.name, "found": True, "sizing": f"none: {missed_words}"}
+    if "depth_mm" in kind.sizes and start.start_depth_mm is not None:
+        made |= {
+            "depth_mm": start.start_depth_mm,
+            "depth_basis": "assumed",
+            "depth_source": missed_words,
+        }
+    elif "depth_mm" in kind.sizes:
+        made |= _depth(body, missed)
+    if "length_mm" in (*kind.sizes, *kind.optional_sizes) and start.start_length_mm is not None:
+        made["length_mm"] = start.start_length_mm
+    elif "length_mm" in kind.sizes:
+        raise _NoCase("The new start after the repair has no length: measure the crack again.")
+    return made
 
 
 def _crack(body: dict[str, Any], m: Measurement) -> dict[str, Any]:
@@ -238,12 +298,12 @@ def _depth(body: dict[str, Any], m: Measurement) -> dict[str, Any]:
 
 
 def _history(body: dict[str, Any], crack: Crack, sizes: list[Measurement]) -> list[dict[str, Any]]:
-    since = rows.counter_since(crack.component)
+    replaced = rows.counter_replaced(crack.component)
     made = []
     for m in sizes:
         inspection = m.finding.inspection
         entry: dict[str, Any] = {"on": inspection.found_on}
-        if since is None or inspection.found_on >= since:
+        if rows.on_this_counter(inspection.found_on, inspection.leaf.index, replaced):
             entry["at"] = inspection.counter
         if m.depth_mm is not None:
             entry["depth_mm"] = m.depth_mm
@@ -276,7 +336,12 @@ def _not_found(body: dict[str, Any], look: Finding) -> dict[str, Any]:
 
 def _previous(location: Location, crack: Crack | None) -> dict[str, Any] | None:
     """What is in force, by signature or deferral."""
-    d = Disposition.objects.filter(location=location, crack=crack).order_by("-leaf__index").first()
+    d = (
+        Disposition.objects.filter(location=location, crack=crack)
+        .select_related("leaf")
+        .order_by("-leaf__index")
+        .first()
+    )
     if d is None:
         return None
     deferral = d.deferrals.order_by("-leaf__index").first()
@@ -284,6 +349,8 @@ def _previous(location: Location, crack: Crack | None) -> dict[str, Any] | None:
         "on": deferral.new_on if deferral else d.until_on,
         "at": deferral.new_at if deferral and deferral.new_at is not None else d.until_at,
     }
+    if rows.on_an_older_counter(location.component, d.leaf.index):
+        del until["at"]
     made: dict[str, Any] = {"verdict": d.verdict}
     until = {key: value for key, value in until.items() if value is not None}
     if until:
@@ -300,9 +367,26 @@ def _shortfalls(inspection: Inspection, look: Finding) -> list[str]:
     ):
         if until is not None and until < inspection.found_on:
             said.append(f"{what} expired {_day(until)}")
+    if inspection.fell_short:
+        said.append(f"not as the procedure asks: {inspection.fell_short}")
     if look.part_not_seen:
         said.append(f"part of the place was not seen: {look.part_not_seen}")
     return said
+
+
+def _welded(location: Location) -> list[str]:
+    """A welded repair brings residual stress back; a basis adopted before it cannot know."""
+    basis = rows.adopted_basis(location)
+    welded = (
+        location.repairs.filter(welded=True, sort=Repair.Sort.REPAIR)
+        .select_related("leaf")
+        .order_by("-leaf__index")
+        .first()
+    )
+    if basis is None or welded is None or basis.adoption.leaf.index > welded.leaf.index:
+        return []
+    on = _day(welded.done_on)
+    return [f"the welded repair of {on} brought residual stress back; the basis is older"]
 
 
 def _day(day: datetime.date) -> str:

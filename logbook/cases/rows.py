@@ -3,6 +3,8 @@
 import datetime
 from decimal import Decimal
 
+from django.db.models import Exists, OuterRef, QuerySet
+
 from logbook.models import (
     Basis,
     Component,
@@ -33,7 +35,7 @@ def measurements(crack: Crack) -> list[Measurement]:
     """
     rows = (
         Measurement.objects.filter(crack=crack, finding__strike_out__isnull=True)
-        .select_related("finding__inspection", "leaf")
+        .select_related("finding__inspection__leaf", "leaf")
         .order_by("finding__inspection__found_on", "leaf__index")
     )
     start = new_start(crack)
@@ -69,16 +71,23 @@ def last_look(location: Location, crack: Crack | None) -> Finding | None:
     )
     rows = rows.filter(crack=crack) if crack is not None else rows.filter(crack__isnull=True)
     return (
-        rows.select_related("inspection", "leaf")
+        rows.select_related("inspection__leaf", "leaf")
         .order_by("-inspection__found_on", "-leaf__index")
         .first()
     )
 
 
+def looks_that_count(component: Component) -> QuerySet[Inspection]:
+    """Visits of which something still stands. One whose every finding was struck out read no
+    counter either: a mistyped reading goes with it."""
+    left = Finding.objects.filter(inspection=OuterRef("pk"), strike_out__isnull=True)
+    return Inspection.objects.filter(Exists(left), component=component)
+
+
 def readings(component: Component) -> list[tuple[datetime.date, Decimal]]:
     """Counter readings, oldest first, since the counter was last replaced; never running back."""
     kept: list[tuple[datetime.date, Decimal]] = []
-    rows = Inspection.objects.filter(component=component).order_by("found_on", "leaf__index")
+    rows = looks_that_count(component).order_by("found_on", "leaf__index")
     for on, at, replaced in rows.values_list("found_on", "counter", "counter_replaced_why"):
         if replaced:
             kept = []
@@ -87,12 +96,26 @@ def readings(component: Component) -> list[tuple[datetime.date, Decimal]]:
     return kept
 
 
-def counter_since(component: Component) -> datetime.date | None:
-    """The day from which today's counter counts: when it was last replaced, if ever."""
+def counter_replaced(component: Component) -> Inspection | None:
+    """The visit that found the counter replaced, the newest, if ever: readings before it are in
+    other units than readings since."""
     return (
-        Inspection.objects.filter(component=component)
+        looks_that_count(component)
         .exclude(counter_replaced_why="")
-        .order_by("-found_on")
-        .values_list("found_on", flat=True)
+        .select_related("leaf")
+        .order_by("-found_on", "-leaf__index")
         .first()
     )
+
+
+def on_this_counter(on: datetime.date, leaf_index: int, replaced: Inspection | None) -> bool:
+    """Was a reading of this day and leaf taken from the counter that runs today?"""
+    if replaced is None:
+        return True
+    return (on, leaf_index) >= (replaced.found_on, replaced.leaf.index)
+
+
+def on_an_older_counter(component: Component, leaf_index: int) -> bool:
+    """Was what stands at this leaf said in readings of a counter that was replaced since?"""
+    replaced = counter_replaced(component)
+    return replaced is not None and leaf_index < replaced.leaf.index

@@ -1,7 +1,7 @@
 """Text and units become one frozen draft, checked once."""
 
 from .draft import FindingDraft, InspectionDraft, NewLocation, Sizes
-from .inspection import read_inspection
+from .inspection import read_correction, read_inspection
 from .known import Known, KnownCrack, KnownLocation
 
 __all__ = [
@@ -12,5 +12,6 @@ __all__ = [
     "KnownLocation",
     "NewLocation",
     "Sizes",
+    "read_correction",
     "read_inspection",
 ]

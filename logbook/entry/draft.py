@@ -59,6 +59,7 @@ class InspectionDraft:
     calibration_valid_until: datetime.date | None
     surface: str
     coverage: str
+    fell_short: str
     inspector_name: str
     qualification_level: str
     qualification_valid_until: datetime.date | None

@@ -87,6 +87,7 @@ def read_inspection(data: Mapping[str, Any], known: Known) -> InspectionDraft:
         ),
         "surface": r.line("surface", 120, "Say how the surface was: bare, painted, wet."),
         "coverage": r.line("coverage", 120, "Say how much was covered: all, or which part."),
+        "fell_short": r.line("fell_short", 500, None),
         "inspector_name": r.line("inspector_name", 120, "Say who looked."),
         "qualification_level": r.line("qualification_level", 60, "Say which level, or none."),
         "qualification_valid_until": r.read(
@@ -290,6 +291,22 @@ def _sizes(r: _Reader, place: KnownLocation | None, last: KnownCrack | None) -> 
         if not r.blank(name)
     )
     return Sizes(basis, depth, length, why_smaller, typed)
+
+
+def read_correction(
+    data: Mapping[str, Any], place: KnownLocation | None, before: KnownCrack | None
+) -> Sizes:
+    """The right size in place of one that is struck out, read as a new one is.
+
+    before : the crack as it was known at the visit; None where the visit found it
+
+    Raises Refusal ("invalid", 400) with a sentence for every field that does not fit.
+    """
+    r = _Reader(data)
+    sizes = _sizes(r, place, before)
+    if r.complaints or sizes is None:
+        raise invalid("The right size does not fit yet.", r.complaints)
+    return sizes
 
 
 def _check_room(

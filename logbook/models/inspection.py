@@ -25,6 +25,7 @@ class Inspection(ActRow):
     calibration_valid_until = models.DateField(null=True)
     surface = models.CharField(max_length=120)
     coverage = models.CharField(max_length=120)
+    fell_short = models.TextField(blank=True, help_text="what the procedure asks and was not so")
     inspector_name = models.CharField(max_length=120)
     qualification_level = models.CharField(max_length=60)
     qualification_valid_until = models.DateField(null=True)

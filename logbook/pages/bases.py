@@ -11,6 +11,7 @@ from django.utils.translation import gettext as _
 from django.views.decorators.http import require_POST
 
 from logbook import access
+from logbook.actions.answer import answer_now
 from logbook.actions.revise_basis import adopt_basis, eased_criteria, revise_basis
 from logbook.cases.rows import adopted_basis
 from logbook.errors import Refusal, not_permitted
@@ -112,7 +113,7 @@ def _lines(one: Basis) -> list[Any]:
 def adopt(request: Asked, pk: int) -> HttpResponse:
     one = access.basis_for(request.user, pk)
     _must_decide(request, one.location)
-    adopt_basis(request.user, one.pk)
+    answer_now(adopt_basis(request.user, one.pk).leaf_id)
     return redirect("basis", one.pk)
 
 

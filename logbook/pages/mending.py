@@ -8,6 +8,8 @@ from django.shortcuts import redirect, render
 from django.utils.translation import gettext as _
 
 from logbook import access
+from logbook.actions.answer import answer_now
+from logbook.actions.reassess import reassess
 from logbook.actions.record_repair import record_repair
 from logbook.actions.return_to_service import return_to_service, shown_digest
 from logbook.actions.strike_out import strike_out
@@ -15,7 +17,7 @@ from logbook.models import Finding, What
 
 from .asked import Asked, may
 from .deciding import licences_of
-from .forms.deciding import CorrectForm, RepairForm, ReturnForm, StrikeOutForm
+from .forms.deciding import CorrectForm, ReassessForm, RepairForm, ReturnForm, StrikeOutForm
 from .lines import finding_words
 from .refusals import attempt, form_status
 
@@ -29,6 +31,7 @@ def strike(request: Asked, pk: int) -> HttpResponse:
     if request.method == "POST" and form.is_valid():
         struck = attempt(form, _strike, request, finding, form.cleaned_data)
         if struck is not None:
+            answer_now(struck.leaf_id)
             return redirect("inspection", finding.inspection_id)
     component = finding.inspection.component
     said = finding_words(finding, request.user.decimal_sign)
@@ -52,14 +55,10 @@ def strike(request: Asked, pk: int) -> HttpResponse:
 
 
 def _strike(request: Asked, finding: Finding, typed: dict[str, Any]) -> Any:
-    sizes = {}
-    if typed.get("depth_basis"):
-        sizes = {name: typed[name] for name in ("depth_basis", "depth_mm", "length_mm")}
-        names = (("depth", "depth_mm"), ("length", "length_mm"))
-        sizes["typed"] = " × ".join(
-            f"{word} {request.POST[name]} mm" for word, name in names if request.POST.get(name)
-        )
-    return strike_out(request.user, finding.pk, typed["reason"], **sizes)
+    # The sizes stay as typed: the action reads them as those of an entry are read.
+    right = {name: request.POST.get(name, "") for name in CorrectForm.RIGHT}
+    given = any(right[name].strip() for name in ("depth_basis", "depth_mm", "length_mm"))
+    return strike_out(request.user, finding.pk, typed["reason"], right if given else None)
 
 
 @login_required
@@ -75,6 +74,7 @@ def new_repair(request: Asked, pk: int) -> HttpResponse:
         typed["closes"] = typed["closes"] == "yes"
         made = attempt(form, record_repair, request.user, place.pk, crack_pk, **typed)
         if made is not None:
+            answer_now(made.leaf_id)
             return redirect("repair", made.pk)
     component = place.component
     about = _("The part is held until a signatory has signed its return to service.")
@@ -139,4 +139,38 @@ def _return(request: Asked, pk: int, typed: dict[str, Any]) -> Any:
         password=typed["password"],
         digest=typed["shown_digest"],
         request=request,
+    )
+
+
+@login_required
+def assess_anew(request: Asked, pk: int) -> HttpResponse:
+    """An engineer asks for the computation anew, with a reason that stays in the book."""
+    place = access.location_for(request.user, pk, "engineer")
+    crack_pk = request.GET.get("crack") or None
+    crack = access.crack_for(request.user, crack_pk) if crack_pk else None
+    form = ReassessForm(request.POST or None)
+    if request.method == "POST" and form.is_valid():
+        act = attempt(
+            form, reassess, request.user, place.pk, crack_pk, why=form.cleaned_data["why"]
+        )
+        if act is not None:
+            answer_now(act)
+            return redirect("crack", crack.pk) if crack else redirect("location", place.pk)
+    component = place.component
+    return render(
+        request,
+        "logbook/form.html",
+        {
+            "tab": "index",
+            "site": component.site,
+            "component": component,
+            "location": place,
+            "crack": crack,
+            "foot_zone": component.site.time_zone,
+            "form": form,
+            "heading": _("Assess it anew"),
+            "about": [_("Nothing that was signed changes; a stricter answer binds at once.")],
+            "verb": _("Assess it anew"),
+        },
+        status=form_status(form),
     )

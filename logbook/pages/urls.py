@@ -39,6 +39,7 @@ urlpatterns = [
     path("location/<int:pk>/", places.location, name="location"),
     path("location/<int:pk>/basis/", bases.revise, name="revise-basis"),
     path("location/<int:pk>/repair/", mending.new_repair, name="record-repair"),
+    path("location/<int:pk>/assess/", mending.assess_anew, name="assess-anew"),
     path("location/<int:pk>/mark/", registering.mark, name="mark"),
     path("crack/<int:pk>/", cracks.crack, name="crack"),
     path("crack/<int:pk>/trace/", trace.crack_trace, name="crack-trace"),

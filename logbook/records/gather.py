@@ -363,6 +363,7 @@ def _look_lines(findings: list[Finding]) -> tuple[Line, ...]:
         ),
         ("surface", inspection.surface),
         ("coverage", inspection.coverage),
+        ("not as the procedure asks", inspection.fell_short or "nothing said"),
     )
     entry = f"entry {inspection.entry_number}"
     return tuple(

@@ -80,6 +80,7 @@ RULES: dict[str, Rule] = dict.fromkeys(UNSCOPED, OPEN) | {
     "location": Rule(ALL, ("location",)),
     "revise-basis": Rule(ENGINEER, ("location",)),
     "record-repair": Rule(LOG, ("location",)),
+    "assess-anew": Rule(ENGINEER, ("location",)),
     "mark": Rule(REGISTER, ("location",)),
     "crack": Rule(ALL, ("crack",)),
     "crack-trace": Rule(ALL, ("crack",)),

@@ -22,8 +22,9 @@ class Deciding:
         """A look on the last clock's day that found a crack at the heel."""
         today = clock.today("Europe/Budapest")
         counter = more.pop("counter", 1000)
+        head = more.pop("head", None)
         seen = crack_seen(self.book.heel, depth, length, crack) | more
-        made = self.book.log(today.isoformat(), counter, seen)
+        made = self.book.log(today.isoformat(), counter, seen, head=head)
         found: Crack = made.findings.get().crack
         return found
 

@@ -302,7 +302,7 @@ def test_a_struck_out_size_counts_no_more(deciding: Deciding) -> None:
     leaves = Leaves()
     strike_out(
         deciding.book.people["crew"], wrong.pk, "wrong gate",
-        depth_basis="measured", depth_mm=Decimal("3.4"), length_mm=Decimal(13),
+        {"depth_basis": "measured", "depth_mm": "3.4", "length_mm": "13"},
     )  # fmt: skip
     assert leaves.new() == ["strike-out"]
     assert deciding.standing(crack).state == "not-assessed"

@@ -102,11 +102,19 @@ class Book:
     heel: Location
     toe: Location
 
-    def log(self, found_on: str, counter: int, *findings: dict[str, Any], by: str = "crew") -> Any:
+    def log(
+        self,
+        found_on: str,
+        counter: int,
+        *findings: dict[str, Any],
+        by: str = "crew",
+        head: dict[str, Any] | None = None,
+    ) -> Any:
         """An inspection in the book, answered."""
-        draft = read_inspection(entry_data(found_on, counter, *findings), known_of(self.gate))
+        data = entry_data(found_on, counter, *findings) | (head or {})
+        draft = read_inspection(data, known_of(self.gate))
         made: Inspection = log_inspection(self.people[by], draft)
-        answer_now(made)
+        answer_now(made.leaf_id)
         return made
 
 

@@ -265,9 +265,12 @@ class _Loading:
             self.people[visit["by"]],
             finding.pk,
             wrong["reason"],
-            depth_basis="measured",
-            depth_mm=Decimal(wrong["depth_mm"]),
-            length_mm=finding.measurement.length_mm,
+            {
+                "depth_basis": "measured",
+                "depth_mm": wrong["depth_mm"],
+                "length_mm": finding.measurement.length_mm,
+                "confirm_unlikely": True,
+            },
         )
         for asked in AssessmentAsked.objects.filter(because_act=made.leaf_id):
             propose(asked.location_id, asked.crack_id)
@@ -306,7 +309,7 @@ def _good_for_long(a: Assessment) -> bool:
 
 
 def _answer_all(inspection: Any) -> None:
-    answer_now(inspection)
+    answer_now(inspection.leaf_id)
     for asked in AssessmentAsked.objects.filter(because_act=inspection.leaf_id):
         propose(asked.location_id, asked.crack_id)
 

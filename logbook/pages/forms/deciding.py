@@ -104,8 +104,20 @@ class CorrectForm(StrikeOutForm):
         [*DepthBasis.choices, ("", _("leave it out: strike out only"))],
         required=False,
     )
-    depth_mm = Number(_("Depth in mm"), required=False)
-    length_mm = Number(_("Length along the surface in mm"), required=False)
+    depth_mm = Text(_("Depth in mm"), required=False)
+    length_mm = Text(_("Length along the surface in mm"), required=False)
+    why_smaller = Text(_("Why it is smaller than the time before, if it is"), required=False)
+    confirm_unlikely = Choice(
+        _("If a size is asked back"),
+        [("", _("not asked")), ("yes", _("this size is right"))],
+        required=False,
+    )
+
+    RIGHT = ("depth_basis", "depth_mm", "length_mm", "why_smaller", "confirm_unlikely")
+
+
+class ReassessForm(forms.Form):
+    why = Text(_("Why it is assessed anew"), lines=2)
 
 
 class RepairForm(forms.Form):

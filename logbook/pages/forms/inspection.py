@@ -35,6 +35,12 @@ HEAD: tuple[tuple[str, Any, Any, str], ...] = (
     ("calibration_valid_until", _("Its calibration is valid until"), "", "date"),
     ("surface", _("Surface"), _("bare, painted, wet, dirty"), "text"),
     ("coverage", _("How much of it you covered"), _("all of it, or which part"), "text"),
+    (
+        "fell_short",
+        _("What was not as the procedure asks"),
+        _("surface, light, reach, coverage; leave it empty if all was"),
+        "text",
+    ),
     ("inspector_name", _("Who looked"), "", "text"),
     ("qualification_level", _("Level of the qualification"), "", "text"),
     ("qualification_valid_until", _("The qualification is valid until"), "", "date"),
