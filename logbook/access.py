@@ -92,7 +92,7 @@ def require(person: Person, site: Site, need: str) -> None:
 def _one(rows: QuerySet[M], site_path: str, person: Person, pk: Any, need: str, what: str) -> M:
     try:
         row = rows.get(pk=pk, **{f"{site_path}__in": sites_of(person)})
-    except (ObjectDoesNotExist, ValueError, OverflowError):
+    except (ObjectDoesNotExist, TypeError, ValueError, OverflowError):
         raise not_found(what) from None
     site: Any = row
     for step in site_path.split("__"):

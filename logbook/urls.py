@@ -6,3 +6,8 @@ urlpatterns = [
     path("api/v1/", include("logbook.api.urls")),
     path("", include("logbook.pages.urls")),
 ]
+
+handler400 = "logbook.faults.bad_request"
+handler403 = "logbook.faults.forbidden"
+handler404 = "logbook.faults.not_found"
+handler500 = "logbook.faults.fault"

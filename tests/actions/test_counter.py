@@ -39,7 +39,12 @@ def test_a_place_last_looked_at_on_the_old_counter_is_referred(deciding: Decidin
     book = deciding.book
     crack = deciding.found(counter=1000)
     toe = {"location": book.toe.pk, "what": "could-not-look", "why": "flooded"}
-    book.log(clock.today("Europe/Budapest").isoformat(), 5, toe, head={"counter_replaced_why": "new counter fitted"})
+    book.log(
+        clock.today("Europe/Budapest").isoformat(),
+        5,
+        toe,
+        head={"counter_replaced_why": "new counter fitted"},
+    )
     answer_all()
     newest = deciding.newest(crack)
     assert newest.verdict == "refer" and "found replaced" in json.loads(newest.reasons)[0]
