@@ -55,7 +55,7 @@ def stress_intensity(
     a, c : depth and half length in m; membrane, bending : MPa, any shapes that broadcast;
     thickness, width : m
     """
-    a, c = np.broadcast_arrays(np.asarray(a, dtype=float), np.asarray(c, dtype=float))
+    a, c = np.asarray(a, dtype=float), np.asarray(c, dtype=float)
     deep, surface, root = _boundary(a, c, thickness, width)
     bend_deep, bend_surface = _bending_factors(a / c, a / thickness)
     return np.stack(
@@ -86,35 +86,63 @@ def shape_terms(shape: Floats, depth_squared: Floats) -> tuple[Floats, Floats, F
     shape : a/c; depth_squared : (a/t)². Shared with cylinders, which use the same M, g, f and Q.
     """
     shallow = shape <= 1.0
-    safe_shape = np.where(shallow, shape, 1.0)
+    if np.all(shallow):
+        return _shallow_terms(shape, depth_squared)
+    # Each form is evaluated where it holds; 1 stands in elsewhere and is not taken.
+    wide = _shallow_terms(np.where(shallow, shape, 1.0), depth_squared)
     inverse = np.where(shallow, 1.0, 1.0 / np.where(shape > 0.0, shape, np.nan))
-    q = 1.0 + 1.464 * np.where(shallow, safe_shape, inverse) ** 1.65
-    m1 = np.where(shallow, 1.13 - 0.09 * safe_shape, np.sqrt(inverse) * (1.0 + 0.04 * inverse))
-    m2 = np.where(shallow, -0.54 + 0.89 / (0.2 + safe_shape), 0.2 * inverse**4)
-    m3 = np.where(
-        shallow,
-        0.5 - 1.0 / (0.65 + safe_shape) + 14.0 * (1.0 - safe_shape) ** 24,
-        -0.11 * inverse**4,
-    )
-    m = m1 + m2 * depth_squared + m3 * depth_squared**2
-    g = 1.1 + 0.35 * np.where(shallow, 1.0, inverse) * depth_squared
-    # f_φ: deepest 1 (a/c ≤ 1) or √(c/a); surface √(a/c) or 1.
-    f_deep = np.where(shallow, 1.0, np.sqrt(inverse))
-    f_surface = np.where(shallow, np.sqrt(safe_shape), 1.0)
-    return m * f_deep, m * f_surface, g, q
+    narrow = _deep_terms(inverse, depth_squared)
+    one, two, three, four = (np.where(shallow, w, n) for w, n in zip(wide, narrow, strict=True))
+    return one, two, three, four
+
+
+def _shallow_terms(s: Floats, depth_squared: Floats) -> tuple[Floats, Floats, Floats, Floats]:
+    """The four terms for s = a/c ≤ 1."""
+    rest = (1.0 - s) ** 2
+    eighth = rest**2 * rest**2  # multiplied out: a power of 24 costs more than all the rest
+    m3 = 0.5 - 1.0 / (0.65 + s) + 14.0 * (eighth * eighth * eighth)
+    m2 = -0.54 + 0.89 / (0.2 + s)
+    m = 1.13 - 0.09 * s + depth_squared * (m2 + m3 * depth_squared)
+    with np.errstate(invalid="ignore"):
+        return m, m * np.sqrt(s), 1.1 + 0.35 * depth_squared, 1.0 + 1.464 * s**1.65
+
+
+def _deep_terms(inverse: Floats, depth_squared: Floats) -> tuple[Floats, Floats, Floats, Floats]:
+    """The four terms for inverse = c/a < 1."""
+    root, fourth = np.sqrt(inverse), inverse**4
+    m = root * (1.0 + 0.04 * inverse)
+    m = m + depth_squared * (0.2 * fourth - 0.11 * fourth * depth_squared)
+    g = 1.1 + 0.35 * inverse * depth_squared
+    return m * root, m, g, 1.0 + 1.464 * inverse**1.65
 
 
 def _bending_factors(shape: Floats, depth: Floats) -> tuple[Floats, Floats]:
     """H at the deepest (H₂) and at the surface point (H₁)."""
     shallow = shape <= 1.0
-    s = np.where(shallow, shape, 1.0)
-    i = np.where(shallow, 1.0, 1.0 / np.where(shape > 0.0, shape, np.nan))
-    g21 = np.where(shallow, -1.22 - 0.12 * s, -2.11 + 0.77 * i)
-    g22 = np.where(
-        shallow,
-        0.55 - 1.05 * s**0.75 + 0.47 * s**1.5,
-        0.55 - 0.72 * i**0.75 + 0.14 * i**1.5,
+    if np.all(shallow):
+        return _shallow_bending(shape, depth)
+    wide = _shallow_bending(np.where(shallow, shape, 1.0), depth)
+    inverse = np.where(shallow, 1.0, 1.0 / np.where(shape > 0.0, shape, np.nan))
+    deep, surface = (
+        np.where(shallow, w, n) for w, n in zip(wide, _deep_bending(inverse, depth), strict=True)
     )
-    h1_linear = np.where(shallow, -0.34 - 0.11 * s, -(0.04 + 0.41 * i))
-    h1_square = np.where(shallow, 0.0, 0.55 - 1.93 * i**0.75 + 1.38 * i**1.5)
-    return 1.0 + depth * (g21 + g22 * depth), 1.0 + depth * (h1_linear + h1_square * depth)
+    return deep, surface
+
+
+def _shallow_bending(s: Floats, depth: Floats) -> tuple[Floats, Floats]:
+    """H₂ and H₁ for s = a/c ≤ 1."""
+    with np.errstate(invalid="ignore"):
+        power = s**0.75
+    g22 = 0.55 - 1.05 * power + 0.47 * power**2
+    g21 = -1.22 - 0.12 * s
+    return 1.0 + depth * (g21 + g22 * depth), 1.0 - depth * (0.34 + 0.11 * s)
+
+
+def _deep_bending(inverse: Floats, depth: Floats) -> tuple[Floats, Floats]:
+    """H₂ and H₁ for inverse = c/a < 1."""
+    power = inverse**0.75
+    g21 = -2.11 + 0.77 * inverse
+    g22 = 0.55 - 0.72 * power + 0.14 * power**2
+    linear = -(0.04 + 0.41 * inverse)
+    square = 0.55 - 1.93 * power + 1.38 * power**2
+    return 1.0 + depth * (g21 + g22 * depth), 1.0 + depth * (linear + square * depth)
