@@ -30,6 +30,14 @@ KEYS = frozenset(
 PROBE = {"depth_mm": Decimal("0.1"), "length_mm": Decimal("0.4")}
 
 
+def asked_by(kind: str) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """The body keys and the loads that a kind of crack asks for; none for a kind not known."""
+    known = assessment.KINDS.get(kind)
+    if known is None:
+        return (), ()
+    return (*known.body_keys, *known.optional_body_keys), known.load_keys
+
+
 def check_basis_body(body: dict[str, Any]) -> None:
     """Refuse a body with which no question can be asked; name the field and the reason.
 

@@ -2,7 +2,6 @@
 
 import hashlib
 import json
-from decimal import Decimal
 from typing import Any
 
 from django.contrib.auth.decorators import login_required
@@ -27,6 +26,7 @@ from logbook.actions.register_site import register_site
 from logbook.actions.set_unsigned_policy import set_unsigned_policy
 from logbook.errors import Refusal, invalid, not_permitted
 from logbook.models import Component, Licence, Location, Material, Person, Photo, Site
+from logbook.records.case_lines import case_lines
 
 from .asked import Asked, may
 from .deciding import licences_of
@@ -42,7 +42,7 @@ from .forms.registering import (
     RoleForm,
     SiteForm,
 )
-from .forms.values import MATERIAL, Values, leaves
+from .forms.values import MATERIAL, Values
 from .refusals import attempt, form_status, show_beside
 
 # Without script the picture is marked at this width, which every screen has room for.
@@ -361,6 +361,9 @@ def material(request: Asked, pk: int) -> HttpResponse:
             "site": one.site,
             "foot_zone": one.site.time_zone,
             "material": one,
-            "values": list(leaves(json.loads(one.body, parse_float=Decimal))),
+            "values": [
+                (line.label.removeprefix("material, "), line.value)
+                for line in case_lines({"material": json.loads(one.body)}, {})
+            ],
         },
     )

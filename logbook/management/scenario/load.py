@@ -42,6 +42,7 @@ from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
 from logbook.actions.standing import latest_assessment, latest_disposition
 from logbook.actions.strike_out import strike_out
+from logbook.cases.text import exact
 from logbook.entry import read_inspection
 from logbook.management.scenario.picture import draw
 from logbook.models import (
@@ -235,7 +236,10 @@ class _Loading:
             mark_picture(self.people["otto"], location.pk, *(float(f) for f in place["mark"]))
             if place["basis"] is not None:
                 basis = revise_basis(
-                    self.people["otto"], location.pk, body=place["basis"], reason="first basis"
+                    self.people["otto"],
+                    location.pk,
+                    body=_with_material(made.site, place["basis"]),
+                    reason="first basis",
                 )
                 adopt_basis(self.people["lena"], basis.pk)
 
@@ -298,6 +302,17 @@ class _Loading:
         if signed.verdict == Verdict.RESTRICT:
             confirm_restriction(self.people["ivo"], signed.pk, "load limiter set; tag 0417 hung")
         return signed
+
+
+def _with_material(site: Site, body: dict[str, Any]) -> dict[str, Any]:
+    """The basis, naming the registered material whose values it carries."""
+    said = exact(body["material"])
+    for one in site.materials.order_by("pk"):
+        if one.body == said:
+            reference = {"id": one.pk, "name": one.name, "revision": one.revision}
+            sources = {**body.get("sources", {}), "material": one.source}
+            return {**body, "material_ref": reference, "sources": sources}
+    raise ValueError(f"no registered material of {site} has the values of this basis")
 
 
 def _good_for_long(a: Assessment) -> bool:

@@ -12,7 +12,9 @@ from decimal import Decimal
 from typing import Any
 
 from django.utils.translation import gettext as _
+from django.utils.translation import gettext_lazy
 
+from logbook.cases.basis import asked_by
 from logbook.errors import invalid
 from logbook.records.case_lines import UNITS
 
@@ -31,21 +33,29 @@ CRITERIA = (
     "failure_probability",
     "surprise",
 )
-BODIES = {
-    "plate-through-centre": ("width_mm", "thickness_mm"),
-    "plate-through-edge": ("width_mm", "thickness_mm", "ends"),
-    "plate-surface": ("width_mm", "thickness_mm"),
-    "cylinder-axial-inside": ("inner_radius_mm", "thickness_mm"),
-    "bar-surface": ("diameter_mm",),
-    "tabulated": ("thickness_mm", "table"),
-}
-LOADS = {
-    "plate-through-centre": ("membrane",),
-    "plate-through-edge": ("membrane", "bending"),
-    "plate-surface": ("membrane", "bending"),
-    "cylinder-axial-inside": ("pressure",),
-    "bar-surface": ("membrane", "bending"),
-    "tabulated": ("membrane",),
+# What a value may be, for names whose value is a word or needs a word of care.
+HINTS = {
+    "yielding": gettext_lazy("continuous or discontinuous"),
+    "typical": gettext_lazy("yes: handbook values, never for acceptance; or no"),
+    "toughness.model": gettext_lazy("fixed, by-temperature or energy-release"),
+    "growth.law": gettext_lazy("paris, two-stage or walker"),
+    "growth.c": gettext_lazy("m/cycle with ΔK in MPa√m"),
+    "bounding.stands_for": gettext_lazy("such as: lowest of three tests; mean plus two deviations"),
+    "loading.residual": gettext_lazy("none: and why there is none"),
+    "loading.temperature_c": gettext_lazy("lowest metal temperature at which the peak can occur"),
+    "per_usage": gettext_lazy("cycles per count of the counter"),
+    "body.ends": gettext_lazy("free to rotate, or held: write free or held"),
+    "body.table": gettext_lazy("[[depth in mm, geometry factor], …]"),
+    "criteria.fracture": gettext_lazy("diagram, or toughness"),
+    "criteria.load_reserve": gettext_lazy("factor on load that must remain"),
+    "criteria.life_factor": gettext_lazy("life is divided by it; common practice: at least 2"),
+    "criteria.size_confidence_sd": gettext_lazy("deviations of the sizing error that are added"),
+    "owner.allows_restriction": gettext_lazy("yes or no"),
+    "owner.leak_tolerated": gettext_lazy("yes or no"),
+    "depth_ratio.value": gettext_lazy(
+        "depth taken as this part of the length, where only that is seen"
+    ),
+    "could_miss.source": gettext_lazy("where it comes from that a look may miss this much"),
 }
 MATERIAL = (
     "yield_mpa",
@@ -72,13 +82,13 @@ MATERIAL = (
 
 def names_for(kind: str) -> tuple[str, ...]:
     """The names that a basis for this kind of crack asks for."""
-    loads = LOADS.get(kind, ("membrane",))
+    body, loads = asked_by(kind)
     return (
-        *(f"body.{name}" for name in BODIES.get(kind, ("thickness_mm",))),
-        *(f"loading.peak.{load}_mpa" for load in loads),
+        *(f"body.{name}" for name in body),
+        *(f"loading.peak.{load}" for load in loads),
         "loading.residual",
         "loading.temperature_c",
-        *(f"loading.cycles.1.{load}_range_mpa" for load in loads),
+        *(f"loading.cycles.1.{_range_of(load)}" for load in loads),
         "loading.cycles.1.stress_ratio",
         "loading.cycles.1.per_usage",
         *(f"criteria.{name}" for name in CRITERIA),
@@ -89,6 +99,12 @@ def names_for(kind: str) -> tuple[str, ...]:
         "could_miss.length_mm",
         "could_miss.source",
     )
+
+
+def _range_of(load: str) -> str:
+    """membrane_mpa → membrane_range_mpa."""
+    name, _unit, unit = load.rpartition("_")
+    return f"{name}_range_{unit}"
 
 
 @dataclass
@@ -116,6 +132,12 @@ class Row:
         return ", ".join(part.replace("_", " ") for part in name.split("."))
 
     @property
+    def hint(self) -> str:
+        """What the value may be, by the end of its name."""
+        fits = (hint for end, hint in HINTS.items() if f".{self.name}".endswith(f".{end}"))
+        return str(next(fits, ""))
+
+    @property
     def spare(self) -> bool:
         """A row whose name is typed too."""
         return not self.name
@@ -135,7 +157,7 @@ class Values:
         have = {name: _text(value) for name, value in leaves(body)}
         order = [*have, *(name for name in names if name not in have)]
         rows = [
-            Row(number, name, have.get(name, ""), sources.get(name, ""))
+            Row(number, name, have.get(name, ""), _source(name, sources) if name in have else "")
             for number, name in enumerate(order)
         ]
         return cls([*rows, *(Row(len(rows) + n, "") for n in range(SPARE))])
@@ -194,6 +216,13 @@ class Values:
             elif not row.said:
                 row.said.extend(sentences)
         return left
+
+
+def _source(name: str, sources: Mapping[str, str]) -> str:
+    """Of the value itself, or of the part of the basis that it belongs to."""
+    path = name.split(".")
+    reach = (".".join(path[:length]) for length in range(len(path), 0, -1))
+    return next((sources[part] for part in reach if sources.get(part)), "")
 
 
 def _ends(name: str, ending: str) -> bool:
