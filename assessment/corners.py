@@ -7,7 +7,7 @@ corner is assessed as the through crack it becomes.
 """
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Any
 
 import numpy as np
@@ -84,6 +84,10 @@ def sizes_to_corner(
     new_x = np.asarray(new.front(new_depth, new_length, new_body), dtype=float)
     broken = None
     if not bool(np.all(np.atleast_1d(new.wall(new_x, new_body)) > 0.0)):
+        if not new.through:
+            # An inner crack that reached one surface can have reached the other too.
+            last = sizes_to_corner(new, new_body, new_depth, new_length)
+            return replace(last, became=True)
         broken = f"A crack of this size ({in_mm(depth, length)}) parts the section."
     return Corner(new, new_body, new_depth, new_length, new_x, became=True, broken=broken)
 

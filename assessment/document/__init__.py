@@ -56,7 +56,7 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     missing: list[Missing] = []
     value = fields.values.get
     crack = read_crack(fields.raw("crack"), missing)
-    body = read_body(fields.raw("body"), crack.kind)
+    body = crack.kind.placed(crack.depth, crack.length, read_body(fields.raw("body"), crack.kind))
     _check_possible(crack, body)
     material = read_material(fields.raw("material"), missing)
     loading = read_loading(fields.raw("loading"), crack.kind, missing)

@@ -3,9 +3,14 @@
 from .bar_surface import KIND as BAR_SURFACE
 from .base import Body, Kind, Loads, WorkingStep
 from .cylinder_axial_inside import KIND as CYLINDER_AXIAL_INSIDE
+from .plate_corner import KIND as PLATE_CORNER
+from .plate_embedded import KIND as PLATE_EMBEDDED
 from .plate_surface import KIND as PLATE_SURFACE
+from .plate_through_both_edges import KIND as PLATE_THROUGH_BOTH_EDGES
 from .plate_through_centre import KIND as PLATE_THROUGH_CENTRE
 from .plate_through_edge import KIND as PLATE_THROUGH_EDGE
+from .specimen_compact_tension import KIND as SPECIMEN_COMPACT_TENSION
+from .specimen_edge_bend import KIND as SPECIMEN_EDGE_BEND
 from .tabulated import KIND as TABULATED
 
 KINDS: dict[str, Kind] = {
@@ -13,9 +18,14 @@ KINDS: dict[str, Kind] = {
     for kind in (
         PLATE_THROUGH_CENTRE,
         PLATE_THROUGH_EDGE,
+        PLATE_THROUGH_BOTH_EDGES,
         PLATE_SURFACE,
+        PLATE_CORNER,
+        PLATE_EMBEDDED,
         CYLINDER_AXIAL_INSIDE,
         BAR_SURFACE,
+        SPECIMEN_COMPACT_TENSION,
+        SPECIMEN_EDGE_BEND,
         TABULATED,
     )
 }

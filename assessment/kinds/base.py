@@ -65,6 +65,8 @@ class Kind:
     marks : (x, body) -> tuple of Mark for one single case
     relations : the validity records of the relations used
     working : (x, loads, body) -> tuple of WorkingStep for one single case
+    placed : (depth_m | None, length_m | None, body) -> body with what the measured size fixes and
+        growth leaves alone, such as where the middle of an inner crack lies
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
     """
@@ -87,6 +89,7 @@ class Kind:
     relations: tuple[Validity, ...]
     working: Callable[[Floats, Loads, Body], tuple[WorkingStep, ...]]
     becomes: Callable[[Floats, Body], tuple[str, float | None, float, Body] | None]
+    placed: Callable[[float | None, float | None, Body], Body] = lambda depth, length, body: body
     through: bool = False
     optional_body_keys: tuple[str, ...] = ()
     optional_sizes: tuple[str, ...] = ()

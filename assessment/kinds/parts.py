@@ -44,6 +44,14 @@ def nominal(loads: Loads, body: Body) -> float | None:
     return total if total != 0.0 else None
 
 
+def longer_than_wide(x: Floats, body: Body) -> str | None:
+    """A crack from one edge that leaves nothing of the width."""
+    if x[0] >= body["width"]:
+        size, width = millimetres(x[0]), millimetres(body["width"])
+        return f"the crack ({size}) is as long as the width ({width})."
+    return None
+
+
 def millimetres(value: Floats | float) -> str:
     return f"{float(value) * 1e3:.4g} mm"
 

@@ -27,6 +27,31 @@ CASES = {
         {"width_mm": 200.0, "thickness_mm": 20.0},
         {"membrane": 150.0, "bending": 20.0},
     ),
+    "plate-through-both-edges": (
+        {"length_mm": 6.0},
+        {"width_mm": 200.0, "thickness_mm": 10.0},
+        {"membrane": 100.0},
+    ),
+    "plate-corner": (
+        {"depth_mm": 3.0, "length_mm": 6.0},
+        {"width_mm": 200.0, "thickness_mm": 20.0},
+        {"membrane": 150.0, "bending": 20.0},
+    ),
+    "plate-embedded": (
+        {"depth_mm": 5.0, "length_mm": 12.0},
+        {"width_mm": 200.0, "thickness_mm": 20.0, "ligament_mm": 6.0},
+        {"membrane": 200.0},
+    ),
+    "specimen-compact-tension": (
+        {"length_mm": 24.0},
+        {"width_mm": 50.0, "thickness_mm": 25.0},
+        {"load": 10.0},
+    ),
+    "specimen-edge-bend": (
+        {"length_mm": 24.0},
+        {"width_mm": 50.0, "thickness_mm": 25.0, "span_mm": 200.0},
+        {"load": 10.0},
+    ),
     "cylinder-axial-inside": (
         {"depth_mm": 2.0, "length_mm": 12.0},
         {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
@@ -40,11 +65,20 @@ CASES = {
     ),
 }
 STRETCH = (1.1, 1.5)
+# A through crack's stress is given whatever the thickness, which is then no part of it; a smaller
+# radius lowers the hoop stress; a thinner wall moves an inner crack out of its middle; and a
+# longer span bends more.
+WITHOUT_A_BAD_DIRECTION = {
+    *((kind, "thickness_mm") for kind in CASES if "through" in kind),
+    ("cylinder-axial-inside", "inner_radius_mm"),
+    ("plate-embedded", "thickness_mm"),
+    ("specimen-edge-bend", "span_mm"),
+}
 
 
 def case_of(kind):
     sizes, body, loads = CASES[kind]
-    cycles = {f"{name}_range_mpa": 0.5 * value for name, value in loads.items()}
+    cycles = {f"{name}_range_{unit(name)}": 0.5 * value for name, value in loads.items()}
     return surface(
         crack={
             "kind": kind,
@@ -52,28 +86,32 @@ def case_of(kind):
             "sizing": {"method": "ultrasonic", "depth_sd_mm": 0.2, "length_sd_mm": 0.3},
         },
         body=dict(body),
-        loading__peak={f"{name}_mpa": value for name, value in loads.items()},
+        loading__peak={f"{name}_{unit(name)}": value for name, value in loads.items()},
         loading__cycles=[{**cycles, "stress_ratio": 0.1, "per_usage": 20}],
     )
 
 
+def unit(load):
+    return "kn" if load in ("load", "pin_load") else "mpa"
+
+
 def worse(kind):
     """(path, factor that makes it worse) for every number that has a bad direction."""
-    sizes, _, loads = CASES[kind]
+    sizes, body, loads = CASES[kind]
     up = [f"crack__{size}" for size in sizes]
     up += [f"crack__sizing__{size[:-3]}_sd_mm" for size in sizes]
-    up += [f"loading__peak__{name}_mpa" for name in loads]
-    up += [f"loading__cycles__0__{name}_range_mpa" for name in loads]
+    up += [f"loading__peak__{name}_{unit(name)}" for name in loads]
+    up += [f"loading__cycles__0__{name}_range_{unit(name)}" for name in loads]
     up += ["loading__cycles__0__per_usage", "material__growth__c", "material__bounding__growth__c"]
     down = ["material__bounding__toughness__k_mat_mpa_sqrt_m", "material__yield_mpa"]
     down += ["material__toughness__k_mat_mpa_sqrt_m"]
     # A through crack's stress is given whatever the thickness, which is then no part of it.
-    if kind in ("plate-surface", "cylinder-axial-inside", "tabulated"):
-        down.append("body__thickness_mm")
-    if kind in ("plate-through-centre", "plate-through-edge", "plate-surface"):
-        down.append("body__width_mm")
-    if kind == "bar-surface":
-        down.append("body__diameter_mm")
+    # An inner crack's ligament counts, and the wall only through its limit load.
+    down += [
+        f"body__{key}"
+        for key, value in body.items()
+        if isinstance(value, float) and (kind, key) not in WITHOUT_A_BAD_DIRECTION
+    ]
     for path in up:
         yield from ((path, stretch) for stretch in STRETCH)
     for path in down:

@@ -10,6 +10,8 @@ from assessment import KINDS
 
 PLATE = {"width": 0.4, "thickness": 0.02}
 EDGE = PLATE | {"ends": "free"}
+INNER = PLATE | {"ligament": 0.006, "middle": 0.01}
+SPECIMEN = {"width": 0.05, "thickness": 0.025, "span": 0.2}
 CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
 
 
@@ -39,6 +41,20 @@ CRACKS = {
     ("plate-surface", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), PLATE),
     ("plate-surface", "a/t ÷ 1.25(a/c + 0.6)"): long_and_shallow,
     ("plate-surface", "2c/W"): lambda value: (np.array([0.005, 0.2 * value]), PLATE),
+    ("plate-through-both-edges", "2a/W"): by_length(0.2, PLATE),
+    ("plate-corner", "a/c"): lambda value: (np.array([0.008 * value, 0.008]), PLATE),
+    ("plate-corner", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), PLATE),
+    ("plate-corner", "c/W"): lambda value: (np.array([0.005, 0.4 * value]), PLATE),
+    ("plate-embedded", "a/c"): lambda value: (np.array([0.004 * value, 0.004]), INNER),
+    ("plate-embedded", "a/(a + p)"): lambda value: (np.array([0.01 * value, 0.01]), INNER),
+    ("plate-embedded", "2a/t"): lambda value: (np.array([0.01 * value, 0.02]), INNER),
+    ("plate-embedded", "2c/W"): lambda value: (np.array([0.003, 0.2 * value]), INNER),
+    ("specimen-compact-tension", "a/W"): by_length(0.05, SPECIMEN),
+    ("specimen-edge-bend", "a/W"): by_length(0.05, SPECIMEN),
+    ("specimen-edge-bend", "S/W"): lambda value: (
+        np.array([0.02]),
+        SPECIMEN | {"span": 0.05 * value},
+    ),
     ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-inside", "t/R"): by_radius,

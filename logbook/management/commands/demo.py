@@ -27,14 +27,19 @@ class Command(BaseCommand):
             "--load-only", action="store_true", help="load the scenario, start nothing"
         )
 
+    def _say(self, line: str) -> None:
+        """At once, also where the output is a file: the address is what a person waits for."""
+        self.stdout.write(line)
+        self.stdout.flush()
+
     def handle(self, *args: Any, **options: Any) -> None:
         if settings.SERVICE:
             raise CommandError("The demo runs in trial mode only: unset LOGBOOK_MODE.")
         call_command("migrate", verbosity=0)
-        load.load_scenario(self.stdout.write)
+        load.load_scenario(self._say)
         if options["load_only"]:
             return
-        serve(_free_port(options["port"]), self.stdout.write)
+        serve(_free_port(options["port"]), self._say)
 
 
 def _free_port(wanted: int) -> int:
