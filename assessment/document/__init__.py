@@ -8,7 +8,7 @@ from typing import Any
 
 import numpy as np
 
-from assessment.document.case import Case, Crack, Missing
+from assessment.document.case import Case, Crack, Loading, Missing
 from assessment.document.crack import read_body, read_crack
 from assessment.document.criteria import (
     check_uncertainty,
@@ -56,10 +56,11 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     missing: list[Missing] = []
     value = fields.values.get
     crack = read_crack(fields.raw("crack"), missing)
-    body = crack.kind.placed(crack.depth, crack.length, read_body(fields.raw("body"), crack.kind))
-    _check_possible(crack, body)
+    body = read_body(fields.raw("body"), crack.kind)
     material = read_material(fields.raw("material"), missing)
     loading = read_loading(fields.raw("loading"), crack.kind, missing)
+    body = crack.kind.placed(crack.depth, crack.length, _named(loading), body)
+    _check_possible(crack, body)
     usage = read_usage(value("usage"), missing)
     criteria = read_criteria(value("criteria"), missing)
     if criteria.fracture == "diagram" and material.yielding is None:
@@ -85,6 +86,15 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
         shortfalls=read_shortfalls(value("look")),
         missing=tuple(missing),
     )
+
+
+def _named(loading: Loading) -> frozenset[str]:
+    """The loads that are not nil, at the peak or in a cycle."""
+    named = {name for name, value in loading.peak.items() if value}
+    for block in loading.cycles:
+        named |= {name for name, value in block.ranges.items() if value}
+        named |= {name for name, value in (block.maxima or {}).items() if value}
+    return frozenset(named)
 
 
 def _check_version(fields: Fields) -> None:

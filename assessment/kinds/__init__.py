@@ -3,6 +3,8 @@
 from .bar_surface import KIND as BAR_SURFACE
 from .base import Body, Kind, Loads, WorkingStep
 from .cylinder_axial_inside import KIND as CYLINDER_AXIAL_INSIDE
+from .hole_through_one import KIND as HOLE_THROUGH_ONE
+from .hole_through_two import KIND as HOLE_THROUGH_TWO
 from .plate_corner import KIND as PLATE_CORNER
 from .plate_embedded import KIND as PLATE_EMBEDDED
 from .plate_surface import KIND as PLATE_SURFACE
@@ -22,6 +24,8 @@ KINDS: dict[str, Kind] = {
         PLATE_SURFACE,
         PLATE_CORNER,
         PLATE_EMBEDDED,
+        HOLE_THROUGH_ONE,
+        HOLE_THROUGH_TWO,
         CYLINDER_AXIAL_INSIDE,
         BAR_SURFACE,
         SPECIMEN_COMPACT_TENSION,

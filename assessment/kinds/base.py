@@ -39,6 +39,10 @@ class WorkingStep:
     source: str
 
 
+def _as_it_is(depth: float | None, length: float | None, loads: frozenset[str], body: Body) -> Body:
+    return body
+
+
 @dataclass(frozen=True)
 class Kind:
     """A crack kind of the case document.
@@ -65,8 +69,9 @@ class Kind:
     marks : (x, body) -> tuple of Mark for one single case
     relations : the validity records of the relations used
     working : (x, loads, body) -> tuple of WorkingStep for one single case
-    placed : (depth_m | None, length_m | None, body) -> body with what the measured size fixes and
-        growth leaves alone, such as where the middle of an inner crack lies
+    placed : (depth_m | None, length_m | None, loads, body) -> body with what else the document
+        fixes and growth leaves alone: where the middle of an inner crack lies, whether there is
+        a pin load. loads : names of those that are not nil in peak or cycles
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
     """
@@ -89,7 +94,7 @@ class Kind:
     relations: tuple[Validity, ...]
     working: Callable[[Floats, Loads, Body], tuple[WorkingStep, ...]]
     becomes: Callable[[Floats, Body], tuple[str, float | None, float, Body] | None]
-    placed: Callable[[float | None, float | None, Body], Body] = lambda depth, length, body: body
+    placed: Callable[[float | None, float | None, frozenset[str], Body], Body] = _as_it_is
     through: bool = False
     optional_body_keys: tuple[str, ...] = ()
     optional_sizes: tuple[str, ...] = ()

@@ -15,7 +15,7 @@ from .base import Body, Kind, Loads, WorkingStep
 AT = ("deepest", "end")
 
 
-def _placed(depth: float | None, length: float | None, body: Body) -> Body:
+def _placed(depth: float | None, length: float | None, loads: frozenset[str], body: Body) -> Body:
     """The distance from the crack's middle to the nearer surface, which growth leaves alone."""
     if depth is None:
         raise ValueError("this kind needs depth and length")

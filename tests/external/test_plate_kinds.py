@@ -11,6 +11,8 @@ from assessment.relations import both_edges, corner_crack, embedded_crack, speci
 
 from .checks import BY_ID, given, starting
 
+NONE: frozenset[str] = frozenset()
+
 
 @pytest.mark.parametrize("name", starting("dent_"))
 def test_both_edges(name: str) -> None:
@@ -71,8 +73,8 @@ def test_an_ellipse_midway_in_a_plate(name: str) -> None:
 def test_nearer_to_one_surface_is_taken_as_midway_in_a_thinner_plate() -> None:
     kind = KINDS["plate-embedded"]
     body = {"width": 0.4, "thickness": 0.04, "ligament": 0.004}
-    near = kind.placed(0.006, 0.02, body)
-    thin = kind.placed(0.006, 0.02, body | {"thickness": 2 * (0.003 + 0.004)})
+    near = kind.placed(0.006, 0.02, NONE, body)
+    thin = kind.placed(0.006, 0.02, NONE, body | {"thickness": 2 * (0.003 + 0.004)})
     x, loads = kind.front(0.006, 0.02, near), {"membrane": np.asarray(100.0)}
     assert near["middle"] == pytest.approx(0.007)
     np.testing.assert_allclose(
@@ -108,11 +110,11 @@ def test_reference_stresses_at_their_ends() -> None:
     one = {"membrane": np.asarray(1.0)}
     body = {"width": 4.0, "thickness": 0.04, "ligament": 0.01}
     inner = KINDS["plate-embedded"]
-    long = inner.placed(0.02, 2.0, body)
+    long = inner.placed(0.02, 2.0, NONE, body)
     assert float(inner.reference_stress(inner.front(0.02, 1.9, long), one, long)) == pytest.approx(
         2.0, rel=0.04
     )
-    small = inner.placed(1e-9, 1e-9, body | {"ligament": 0.02})
+    small = inner.placed(1e-9, 1e-9, NONE, body | {"ligament": 0.02})
     assert float(
         inner.reference_stress(inner.front(1e-9, 1e-9, small), one, small)
     ) == pytest.approx(1.0)

@@ -12,6 +12,15 @@ PLATE = {"width": 0.4, "thickness": 0.02}
 EDGE = PLATE | {"ends": "free"}
 INNER = PLATE | {"ligament": 0.006, "middle": 0.01}
 SPECIMEN = {"width": 0.05, "thickness": 0.025, "span": 0.2}
+HOLE = {"width": 0.1, "thickness": 0.01, "hole_diameter": 0.02}
+PINNED = HOLE | {"pinned": True}
+AT_HOLE = {
+    "L/R": lambda value: (np.array([0.01 * value]), HOLE | {"width": 1.0}),
+    "hole and crack/W": lambda value: (np.array([0.05 * value - 0.01]), HOLE),
+    "(D + ΣL)/W": lambda value: (np.array([0.1 * value - 0.02]), HOLE),
+    "2R/W": lambda value: (np.array([0.004]), PINNED | {"width": 0.02 / value}),
+    "L/(W/2 − R)": lambda value: (np.array([0.04 * value]), PINNED),
+}
 CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
 
 
@@ -55,6 +64,12 @@ CRACKS = {
         np.array([0.02]),
         SPECIMEN | {"span": 0.05 * value},
     ),
+    **{
+        (f"hole-through-{n}", symbol): crack
+        for n in ("one", "two")
+        for symbol, crack in AT_HOLE.items()
+    },
+    ("hole-through-two", "(D + ΣL)/W"): lambda value: (np.array([0.05 * value - 0.01]), HOLE),
     ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-inside", "t/R"): by_radius,
