@@ -39,8 +39,11 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
         yield "The length was not given: the shape of the front is assumed."
     if loading.residual_said is not None:
         yield f"Residual stress, as stated: {loading.residual_said}."
-    if loading.residual_given:
-        yield "Residual stress is given but not computed yet: all results here leave it out."
+    if loading.residual:
+        yield (
+            "The residual stress stays as it is while the crack grows and the load changes; where "
+            "it would press the crack shut it is not counted on."
+        )
     if loading.cycles_said is not None:
         yield f"Cycles, as stated: {loading.cycles_said}."
     if loading.temperature is None:

@@ -5,14 +5,14 @@ where life ends), never in how it is computed. Growth from a size on is in ``lif
 """
 
 from collections.abc import Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 
 from assessment.corners import Corner
 from assessment.document import Case, CaseRefused
 from assessment.document.case import Material
-from assessment.failure import OPTION_1, Point, assess_point, option_1_curve
+from assessment.failure import OPTION_1, RHO, Point, assess_point, option_1_curve
 from assessment.growth import CycleBlock, GrowthLaw
 from assessment.toughness import ToughnessModel, ToughnessResult, toughness
 from assessment.toughness.value import TemperatureMissing
@@ -30,6 +30,7 @@ class Look:
     toughness : MPa√m; growth : law; fracture : "toughness" or "diagram"
     peak : peak load by load name, MPa; cycles : blocks per unit of usage
     reserve : life ends at the first size at which the reserve on load is this
+    residual : residual stress by load name, MPa; it stays when the load is reduced
     decides : True for the bounding look, which uses the toughness criterion at low load ratio only
     """
 
@@ -41,6 +42,7 @@ class Look:
     cycles: tuple[CycleBlock, ...]
     reserve: float
     decides: bool = False
+    residual: Loads = field(default_factory=dict)
 
     def at_load(self, factor: float, cycles_fall: bool) -> "Look":
         """The same look with the peak load (and the cycles, where they fall too) reduced."""
@@ -61,6 +63,7 @@ class Estimate:
     """A size at the peak load. ``k`` in MPa√m by point of the front.
 
     unsettled : why the criterion that the decision needs could not be used, or None
+    residual_k : MPa√m of the residual stress by point, as it stands
     """
 
     corner: Corner
@@ -68,6 +71,7 @@ class Estimate:
     point: Point
     marks: tuple[Mark, ...]
     unsettled: str | None = None
+    residual_k: Floats | None = None
 
 
 def has_diagram(material: Material) -> bool:
@@ -147,14 +151,28 @@ def estimate(look: Look, corner: Corner) -> Estimate:
     kind, x, body = corner.kind, corner.x, corner.body
     k = np.asarray(kind.stress_intensity(x, loads, body), dtype=float)
     given = (kind, x, loads, body, look.material, look.toughness)
-    point, unsettled = assess_point(*given, look.fracture), None
+    held = arrays(loads_for(corner, look.residual)) if look.residual else {}
+    point, unsettled = assess_point(*given, look.fracture, held), None
     alone = look.fracture == "toughness" and not point.load_ratio < TOUGHNESS_ALONE_BELOW
     if look.decides and alone:
         if look.has_diagram:
-            point = assess_point(*given, "diagram")
+            point = assess_point(*given, "diagram", held)
         else:
             unsettled = _unsettled(look.material, point.load_ratio)
-    return Estimate(corner, k, point, tuple(kind.marks(x, body)), unsettled)
+    residual_k = np.zeros_like(k)
+    if held:
+        residual_k = np.asarray(kind.stress_intensity(x, held, body), dtype=float)
+    marks = (*kind.marks(x, body), *_interaction_marks(point, k, residual_k))
+    return Estimate(corner, k, point, marks, unsettled, residual_k)
+
+
+def _interaction_marks(point: Point, k: Floats, residual_k: Floats) -> tuple[Mark, ...]:
+    """Where the term for residual stress and yielding is used outside its range."""
+    opened = (k > 0.0) & (residual_k > 0.0)
+    if point.fracture != "diagram" or not np.any(opened):
+        return ()
+    chi = np.max(np.where(opened, residual_k, 0.0) / np.where(opened, k, 1.0)) * point.load_ratio
+    return RHO.marks({"χ": float(chi)})
 
 
 def _unsettled(material: Material, load_ratio: float) -> str:

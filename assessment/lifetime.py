@@ -15,7 +15,7 @@ from assessment.estimate import (
     estimate,
     loads_for,
 )
-from assessment.failure import lr_max, option_1
+from assessment.failure import FULL_BELOW, lr_max, option_1, ratios
 from assessment.growth import CycleBlock, Growth, cycles_per_usage, grow, rates
 from assessment.kinds.base import Kind
 from assessment.validity import Floats
@@ -63,6 +63,7 @@ def blocks_for(look: Look, corner: Corner) -> tuple[CycleBlock, ...]:
             stress_ratio=block.stress_ratio,
             maxima=None if block.maxima is None else loads_for(corner, block.maxima),
             per_usage=block.per_usage,
+            residual=loads_for(corner, look.residual) if look.residual else {},
         )
         for block in look.cycles
     )
@@ -74,15 +75,27 @@ def margin(look: Look, corner: Corner, x: Floats) -> Floats:
     The point is taken at ``look.reserve`` times the peak load and compared with the limit, which
     has the same sign as reserve − look.reserve and needs no root. x : (front variables, samples).
     """
-    kind, body, material = corner.kind, corner.body, look.material
+    if not look.residual:
+        return _margin_at(look, corner, x, look.reserve)
+    # On the way to the full load ρ is largest where it starts to fall, so both are looked at.
     loads = arrays(loads_for(corner, look.peak))
-    k = np.max(kind.stress_intensity(x, loads, body), axis=0)
-    ratio = np.asarray(kind.reference_stress(x, loads, body)) / material.yield_strength
-    kr = look.reserve * np.where(k < 0.0, 0.0, k) / look.toughness
-    lr = look.reserve * ratio
-    alone = np.minimum(
-        1.0 - kr, 1.0 - lr / lr_max(material.yield_strength, material.ultimate_strength)
-    )
+    lr = corner.kind.reference_stress(x, loads, corner.body) / look.material.yield_strength
+    with np.errstate(divide="ignore"):
+        knee = np.where(lr > 0.0, np.minimum(FULL_BELOW / lr, look.reserve), look.reserve)
+    at_full, at_knee = (_margin_at(look, corner, x, f) for f in (look.reserve, knee))
+    return np.minimum(at_full, at_knee)
+
+
+def _margin_at(look: Look, corner: Corner, x: Floats, factor: Floats | float) -> Floats:
+    """Limit less what acts, at so many times the peak load."""
+    material = look.material
+    loads = arrays(loads_for(corner, look.peak))
+    held = arrays(loads_for(corner, look.residual)) if look.residual else {}
+    found = ratios(corner.kind, x, loads, corner.body, material, look.toughness, held)
+    ratio, lr = found.load_ratio, factor * found.load_ratio
+    cut_off = lr_max(material.yield_strength, material.ultimate_strength)
+    kr = found.toughness_ratio(factor, False)
+    alone = np.minimum(1.0 - kr, 1.0 - lr / cut_off)
     low = look.fracture == "toughness"
     if low and not look.decides:
         return alone
@@ -95,7 +108,7 @@ def margin(look: Look, corner: Corner, x: Floats) -> Floats:
         material.elastic_modulus,
         str(material.yielding),
     )
-    drawn = np.where(np.isnan(lr), np.nan, limit - kr)
+    drawn = np.where(np.isnan(lr), np.nan, limit - found.toughness_ratio(factor, True))
     return np.where(ratio < TOUGHNESS_ALONE_BELOW, alone, drawn) if low else drawn
 
 

@@ -77,7 +77,9 @@ def _stress_intensity(case: Case, look: Look, one: Estimate) -> list[dict[str, A
     loads = arrays(loads_for(corner, look.peak))
     nominal = corner.kind.nominal_stress(loads, corner.body)
     size = float(corner.x[0])  # a of the contract: depth, or half or whole of a length
-    residual = None if case.loading.residual_said is None else 0.0
+    # Null where nothing is known of residual stress: nil would be a claim.
+    unknown = case.loading.residual_said is None
+    held = np.zeros_like(one.k) if one.residual_k is None else one.residual_k
     return [
         {
             "at": name,
@@ -85,9 +87,11 @@ def _stress_intensity(case: Case, look: Look, one: Estimate) -> list[dict[str, A
             "geometry_factor": None
             if not nominal
             else float(k) / (float(nominal) * float(np.sqrt(np.pi * size))),
-            "residual_k_mpa_sqrt_m": residual,
+            "residual_k_mpa_sqrt_m": None if unknown else float(residual),
         }
-        for name, k in zip(corner.kind.points, np.ravel(one.k), strict=True)
+        for name, k, residual in zip(
+            corner.kind.points, np.ravel(one.k), np.ravel(held), strict=True
+        )
     ]
 
 

@@ -89,6 +89,7 @@ def compute(case: Case) -> Found:
         peak=case.loading.peak,
         cycles=case.loading.cycles,
         reserve=1.0,
+        residual=case.loading.residual,
     )
     best = estimate(best_look, best_corner)
     best_life = life(best_look, best_corner)

@@ -8,7 +8,7 @@ import numpy as np
 from assessment.corners import in_mm
 from assessment.document.case import Case
 from assessment.estimate import Estimate, Look, arrays, loads_for
-from assessment.failure import OPTION_1
+from assessment.failure import OPTION_1, RHO
 from assessment.growth import GrowthLaw, TwoStage, Walker
 from assessment.interval import LIFE, rate
 from assessment.kinds.base import WorkingStep
@@ -62,15 +62,39 @@ def _of_estimate(look: Look, one: Estimate) -> Iterator[WorkingStep]:
     yield from _of_point(look, one)
 
 
+def _toughness_ratio(look: Look, one: Estimate) -> Iterator[WorkingStep]:
+    point, source = one.point, OPTION_1.source
+    held = one.residual_k
+    if not look.residual or held is None:
+        numbers = f"{float(np.max(one.k)):.6g} / {look.toughness:.6g}"
+        formula = "K_r = largest K of the front / K_mat"
+        yield WorkingStep("toughness ratio", formula, numbers, point.toughness_ratio, "", source)
+        return
+    stresses = ", ".join(f"{name} {value:g} MPa" for name, value in look.residual.items())
+    for name, k in zip(one.corner.kind.points, np.ravel(held), strict=True):
+        formula = "K_s: as K, with the residual stress; nil where it presses the crack shut"
+        words = f"Residual stress intensity factor, {name}"
+        yield WorkingStep(words, formula, stresses, max(float(k), 0.0), "MPa√m", _HERE)
+    drawn = point.fracture == "diagram"
+    yield WorkingStep(
+        "toughness ratio",
+        "K_r = largest of (K + K_s)/K_mat + ρ(χ, L_r), χ = K_s L_r / K"
+        if drawn
+        else "K_r = largest of (K + K_s)/K_mat",
+        f"K_mat = {look.toughness:.6g} MPa√m, L_r = {point.load_ratio:.6g}",
+        point.toughness_ratio,
+        "",
+        f"{source}; {RHO.source}" if drawn else source,
+    )
+
+
 def _of_point(look: Look, one: Estimate) -> Iterator[WorkingStep]:
     point, material = one.point, look.material
     source = OPTION_1.source
     reference = point.load_ratio * material.yield_strength
     numbers = f"{reference:.6g} / {material.yield_strength:g}"
     yield WorkingStep("load ratio", "L_r = σ_ref / σ_Y", numbers, point.load_ratio, "", source)
-    numbers = f"{float(np.max(one.k)):.6g} / {look.toughness:.6g}"
-    formula = "K_r = largest K of the front / K_mat"
-    yield WorkingStep("toughness ratio", formula, numbers, point.toughness_ratio, "", source)
+    yield from _toughness_ratio(look, one)
     if point.limit is not None:
         yield WorkingStep(
             "limit of the diagram at this load ratio",

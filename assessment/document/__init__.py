@@ -58,7 +58,7 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     crack = read_crack(fields.raw("crack"), missing)
     body = read_body(fields.raw("body"), crack.kind)
     material = read_material(fields.raw("material"), missing)
-    loading = read_loading(fields.raw("loading"), crack.kind, missing)
+    loading = read_loading(fields.raw("loading"), crack.kind, material.yield_strength, missing)
     body = crack.kind.placed(crack.depth, crack.length, _named(loading), body)
     _check_possible(crack, body)
     usage = read_usage(value("usage"), missing)

@@ -78,7 +78,10 @@ class Material:
 
 @dataclass(frozen=True)
 class Loading:
-    """Peak load by load name in MPa, cycle blocks, and what is said about residual stress.
+    """Peak load by load name in MPa (kN for forces), cycle blocks, and residual stress.
+
+    ``residual`` is by load name in MPa, empty where there is none or none is known;
+    ``residual_said`` is why there is none, or where the given one comes from.
 
     ``reducible`` is the part of each peak load (0 to 1) that a limiter can take away, and
     ``cycles_fall`` says whether the cycles fall in the same proportion.
@@ -88,7 +91,7 @@ class Loading:
     cycles: tuple[CycleBlock, ...]
     cycles_said: str | None
     residual_said: str | None
-    residual_given: bool
+    residual: Mapping[str, float]
     temperature: float | None
     reducible: float | None
     cycles_fall: bool

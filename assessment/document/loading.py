@@ -3,7 +3,6 @@
 from typing import Any
 
 from assessment.document.case import Loading, Missing
-from assessment.document.crack import TABLE_POINTS
 from assessment.document.fields import Fields
 from assessment.document.refusal import CaseRefused
 from assessment.growth import CycleBlock
@@ -16,7 +15,7 @@ PEAK_SLACK = 1e-9
 _KEYS = ("peak", "residual", "cycles", "temperature_c", "reducible_part", "cycles_fall")
 
 
-def read_loading(value: Any, kind: Kind, missing: list[Missing]) -> Loading:
+def read_loading(value: Any, kind: Kind, yield_strength: float, missing: list[Missing]) -> Loading:
     """The loading section; residual stress or cycles that are not there go to ``missing``.
 
     Two keys are ours: ``reducible_part`` (0 to 1) is the part of the peak load that a limiter can
@@ -25,13 +24,13 @@ def read_loading(value: Any, kind: Kind, missing: list[Missing]) -> Loading:
     loading = Fields("loading", value, _KEYS)
     peak = _peak(loading, kind)
     cycles, cycles_said = _cycles(loading, kind, peak, missing)
-    said, given = _residual(loading, missing)
+    said, residual = _residual(loading, kind, yield_strength, missing)
     return Loading(
         peak=peak,
         cycles=cycles,
         cycles_said=cycles_said,
         residual_said=said,
-        residual_given=given,
+        residual=residual,
         temperature=loading.number_or_none("temperature_c", least=-273.15),
         reducible=loading.number_or_none("reducible_part", above=0.0, most=1.0),
         cycles_fall=loading.flag("cycles_fall", False),
@@ -62,23 +61,64 @@ def _refuse_profile(fields: Fields) -> None:
         raise fields.refuse("profile", "a stress profile is not computed yet.")
 
 
-def _residual(loading: Fields, missing: list[Missing]) -> tuple[str | None, bool]:
+def _residual(
+    loading: Fields, kind: Kind, yield_strength: float, missing: list[Missing]
+) -> tuple[str | None, dict[str, float]]:
+    """What is said of it, and its stresses by the kind's own load names."""
     if "residual" not in loading:
         why = 'residual stress is missing; where there is none, write "none: " and why.'
         missing.append(Missing(loading.path("residual"), why))
-        return None, False
+        return None, {}
     said = loading.says_none("residual")
     if said is not None:
-        return said, False
-    keys = ("membrane_mpa", "bending_mpa", "profile")
+        return said, {}
+    keys = ("membrane_mpa", "bending_mpa", "level", "source", "profile")
     fields = Fields(loading.path("residual"), loading.values["residual"], keys)
-    for key in keys[:2]:
-        fields.number_or_none(key)
-    if "profile" in fields:
-        fields.items("profile", TABLE_POINTS)
-    why = "residual stress is not computed yet, so all results leave it out."
-    missing.append(Missing(loading.path("residual"), why))
-    return None, True
+    _refuse_profile(fields)
+    if "level" in fields:
+        return _level(fields, kind, yield_strength, missing)
+    if "membrane_mpa" not in fields and "bending_mpa" not in fields:
+        raise fields.refuse("membrane_mpa", "membrane_mpa, bending_mpa or a level is needed.")
+    given = {name: fields.number_or_none(f"{name}_mpa") or 0.0 for name in ("membrane", "bending")}
+    source = fields.text_or_none("source")
+    return source or "as given", _for_kind(fields, kind, given, missing)
+
+
+# BS 7910:2013, 7.1.8 (from memory): yield magnitude as welded; after heat treatment 30 % of yield
+# along the weld and 20 % across it.
+RESIDUAL_LEVELS = {
+    "as-welded": (1.0, "yield magnitude, as welded"),
+    "heat-treated-along": (0.3, "30 % of yield, heat treated, stress along the weld"),
+    "heat-treated-across": (0.2, "20 % of yield, heat treated, stress across the weld"),
+}
+
+
+def _level(
+    fields: Fields, kind: Kind, yield_strength: float, missing: list[Missing]
+) -> tuple[str, dict[str, float]]:
+    """A level of the standard, chosen by name and never silent: a membrane stress."""
+    for key in ("membrane_mpa", "bending_mpa"):
+        if key in fields:
+            raise fields.refuse(key, "give either stresses or a level, not both.")
+    part, words = RESIDUAL_LEVELS[fields.choice("level", tuple(RESIDUAL_LEVELS))]
+    source = fields.text("source")
+    given = {"membrane": part * yield_strength, "bending": 0.0}
+    return f"{words} (BS 7910:2013, 7.1.8); {source}", _for_kind(fields, kind, given, missing)
+
+
+def _for_kind(
+    fields: Fields, kind: Kind, given: dict[str, float], missing: list[Missing]
+) -> dict[str, float]:
+    """The stresses as the kind takes them: bending that it does not know counts as membrane."""
+    names = {load_name(key) for key in kind.load_keys}
+    if "membrane" not in names:
+        why = f"residual stress is not computed for cracks of kind {kind.name!r}."
+        missing.append(Missing(fields.where, why))
+        return {}
+    if "bending" in names:
+        return {name: value for name, value in given.items() if value}
+    total = given["membrane"] + abs(given["bending"])
+    return {"membrane": total} if total else {}
 
 
 def _cycles(

@@ -155,7 +155,7 @@ def grow(
 
 def _none(kind: Kind) -> Drive:
     name = (kind.load_keys[0].rpartition("_")[0],)
-    return Drive(name, np.zeros((1, 1)), np.zeros((1, 1)), np.zeros(1))
+    return Drive(name, np.zeros((1, 1)), np.zeros((1, 1)), np.zeros(1), np.zeros((1, 1)))
 
 
 class _Run:

@@ -28,14 +28,17 @@ class Drive:
     upper: Floats
     lower: Floats
     per_usage: Floats
+    residual: Floats
 
 
 def drive_of(blocks: Sequence[CycleBlock]) -> Drive:
-    names = tuple(dict.fromkeys(name for block in blocks for name in block.ranges))
+    held = blocks[0].residual
+    names = tuple(dict.fromkeys(name for one in blocks for name in (*one.ranges, *one.residual)))
     ranges = np.array([[block.ranges.get(n, 0.0) for n in names] for block in blocks])
     upper = np.array([[_upper(block, n) for n in names] for block in blocks])
     per_usage = np.array([block.per_usage for block in blocks])
-    return Drive(names, upper, upper - ranges, per_usage)
+    residual = np.array([[held.get(n, 0.0) for n in names]])
+    return Drive(names, upper, upper - ranges, per_usage, residual)
 
 
 def _upper(block: CycleBlock, name: str) -> float:
@@ -55,6 +58,10 @@ def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> Floats:
     """The law's effective range, shape (blocks, points, samples); nil where it stays shut."""
     first = _weighed(drive.upper, unit_k)
     second = _weighed(drive.lower, unit_k)
+    if np.any(drive.residual != 0.0):
+        # What presses the crack shut is not counted on (decisions: no credit where not proved).
+        held = np.maximum(_weighed(drive.residual, unit_k), 0.0)
+        first, second = first + held, second + held
     high = np.maximum(np.maximum(first, second), 0.0)
     low = np.maximum(np.minimum(first, second), 0.0)
     ratio = np.divide(low, high, out=np.zeros_like(low), where=high > 0.0)

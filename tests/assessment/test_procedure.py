@@ -89,7 +89,6 @@ def test_the_diagram_carries_its_curve_and_both_points():
         ({"material__bounding": DROP}, "material.bounding.toughness"),
         ({"material__typical": True}, "material.typical"),
         ({"loading__residual": DROP}, "loading.residual"),
-        ({"loading__residual": {"membrane_mpa": 100}}, "loading.residual"),
         ({"loading__cycles": DROP}, "loading.cycles"),
         ({"criteria": DROP}, "criteria.load_reserve"),
         ({"criteria__longest_interval_days": DROP}, "criteria.longest_interval_days"),

@@ -156,7 +156,6 @@ def test_a_maximum_equal_to_the_peak_passes_and_one_above_it_does_not():
         ),
         ({"material__bounding__stands_for": DROP}, "material.bounding.stands_for"),
         ({"loading__residual": DROP}, "loading.residual"),
-        ({"loading__residual": {"membrane_mpa": 50}}, "loading.residual"),
         ({"loading__cycles": DROP}, "loading.cycles"),
         ({"usage": DROP}, "usage.per_day"),
         ({"criteria": DROP}, "criteria.load_reserve"),
