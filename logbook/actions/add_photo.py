@@ -37,7 +37,9 @@ def add_photo(by: Person, photo_pk: Any, data: bytes) -> Photo:
     if not access.roles_at(by, photo.site) & (access.NEEDS["log"] | access.NEEDS["register"]):
         raise not_found("photo")
     if hashlib.sha256(data).hexdigest() != photo.sha256:
-        raise _wrong("These are not the bytes that the entry declared. Send the photo again.")
+        raise _wrong(
+            "This is another photo than the entry names. Send the one that was chosen then."
+        )
     if photo.arrived_at is not None:
         return photo
     kind, copy, size = _decode(data)

@@ -136,6 +136,14 @@ def _check(d: Disposition, new_on: datetime.date, new_at: Decimal | None) -> Non
         )
 
 
+def latest_day(d: Disposition) -> datetime.date | None:
+    """The last day to which this look can be put off; None where it cannot be."""
+    latest, _at = _latest(d)
+    if latest is None or d.until_on is None or latest <= d.until_on:
+        return None
+    return latest
+
+
 def _latest(d: Disposition) -> tuple[datetime.date | None, Decimal | None]:
     """The day and counter of rule 1 in the outcome that was signed; None where it gives none."""
     if d.assessment.outcome_text is None:

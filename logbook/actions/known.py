@@ -27,6 +27,7 @@ def known_of(component: Component, before: Inspection | None = None) -> Known:
         today=clock.today(component.site.time_zone),
         last_found_on=last[0] if last else None,
         last_counter=last[1] if last else None,
+        per_day=component.per_day,
         locations={
             location.pk: _location(location, bodies.get(location.pk))
             for location in component.locations.all()

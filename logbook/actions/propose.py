@@ -69,7 +69,7 @@ def propose(location_id: int, crack_id: int | None) -> Assessment | None:
             log.exception("assessment of location %s crack %s failed", location_id, crack_id)
             if not _failed(asked, error):
                 return None
-            answer = _gave_up(error)
+            answer = _gave_up()
         written = _write(location, crack, frozen, answer)
         if written is not None:
             return written
@@ -96,10 +96,10 @@ def _failed(asked: list[AssessmentAsked], error: Exception) -> bool:
     return max((a.tries for a in asked), default=0) + 1 >= MOST_TRIES
 
 
-def _gave_up(error: Exception) -> _Answer:
+def _gave_up() -> _Answer:
     return _Answer(
         Verdict.REFER,
-        [f"The computation did not finish ({type(error).__name__}). An engineer decides."],
+        ["The computation did not finish. An engineer decides."],
         gave_up=True,
     )
 
@@ -149,6 +149,7 @@ def _limit(outcome: dict[str, Any]) -> str:
     restriction = outcome.get("restriction")
     if not restriction:
         return ""
+    # The same number as in standing.load_factor, which tells a lower limit from a higher.
     percent = math.floor(restriction["factor"] * 100)
     return f"{percent} % of the largest load"
 

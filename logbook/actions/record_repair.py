@@ -54,7 +54,17 @@ def record_repair(
             "inspection_after": "Say how it was looked at afterwards, and what was found.",
         },
     )
-    _check(location, crack, sort, done_on, closes, start_depth_mm, start_length_mm, start_source)
+    _check(
+        location,
+        crack,
+        sort,
+        done_on,
+        counter,
+        closes,
+        start_depth_mm,
+        start_length_mm,
+        start_source,
+    )
     act = uuid.uuid4()
     with transaction.atomic():
         Component.objects.select_for_update().get(pk=location.component_id)
@@ -112,12 +122,18 @@ def _check(
     crack: Crack | None,
     sort: str,
     done_on: datetime.date,
+    counter: Decimal,
     closes: bool,
     depth: Decimal | None,
     length: Decimal | None,
     source: str,
 ) -> None:
     wrong: dict[str, list[str]] = {}
+    last = standing.last_counter(location.component)
+    if last is not None and counter < last and done_on >= _last_day(location.component):
+        wrong["counter"] = [
+            f"The counter stood at {last.normalize():f} at the last look; it cannot run back."
+        ]
     if sort not in Repair.Sort.values:
         wrong["sort"] = ["Say whether it was repaired, exchanged or removed."]
     if crack is not None and crack.location_id != location.pk:
@@ -137,3 +153,9 @@ def _check(
             wrong["start_source"] = ["Say where this size comes from."]
     if wrong:
         raise invalid("Some of this does not fit yet.", wrong)
+
+
+def _last_day(component: Component) -> datetime.date:
+    """The day of the newest look; the beginning of time where nobody has looked."""
+    found = component.inspections.order_by("-found_on").values_list("found_on", flat=True).first()
+    return found or datetime.date.min

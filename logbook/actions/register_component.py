@@ -101,6 +101,11 @@ def add_location(by: Person, component_pk: Any, *, name: str, described: str = "
     read = needed({"name": name}, {"name": "Name the place."})
     with transaction.atomic():
         Component.objects.select_for_update().get(pk=component.pk)
+        if component.locations.filter(name__iexact=read["name"]).exists():
+            raise invalid(
+                "A place of this name is on the part already.",
+                {"name": ["Choose another name, so that nobody takes one place for the other."]},
+            )
         last = component.locations.order_by("-number").first()
         made = Location.objects.create(
             component=component,

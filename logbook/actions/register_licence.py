@@ -65,7 +65,9 @@ def register_licence(
                 names={"person": str(person)},
             )
     except IntegrityError:
-        raise conflict("taken", "This licence is on the books already.") from None
+        raise conflict(
+            "taken", "This licence is on the books already, with this first day."
+        ) from None
     return licence
 
 

@@ -8,6 +8,7 @@ from django.db import transaction
 from logbook import access
 from logbook.actions.fields import needed
 from logbook.cases import text
+from logbook.cases.basis import check_material
 from logbook.journal import append
 from logbook.models import Material, Person, Site
 
@@ -19,13 +20,14 @@ def register_material(
 ) -> Material:
     """body is the "material" part of the case document, numbers as Decimal or int.
 
-    It is checked as a whole when a basis takes it up: what a law or model needs depends on that.
+    Raises Refusal ("invalid") with the value's own name where the computation could not read it.
     """
     access.require(by, site, "engineer")
     read = needed(
         {"name": name, "source": source},
         {"name": "Name the material.", "source": "Say where its values come from."},
     )
+    check_material(body)
     exact = text.exact(body)
     act = uuid.uuid4()
     with transaction.atomic():

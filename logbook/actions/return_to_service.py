@@ -7,7 +7,7 @@ from django.db import transaction
 from django.http import HttpRequest
 
 from logbook import access, clock
-from logbook.actions import standing
+from logbook.actions import ask, standing
 from logbook.actions.fields import needed
 from logbook.actions.password import confirm_password
 from logbook.cases.text import digest as text_digest
@@ -98,6 +98,9 @@ def return_to_service(
         )
         for crack in dict.fromkeys([*touched, None]):
             standing.refresh(repair.location, crack)
+        if repair.closes and not repair.location.cracks.filter(closed_at__isnull=True).exists():
+            # The place stands for itself again, and nothing from before the work counts.
+            ask.for_assessment(repair.location, None, act)
     return made
 
 

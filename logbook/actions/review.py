@@ -1,6 +1,7 @@
 """An engineer's word on a proposal: accepted as it is, or another verdict with stated grounds."""
 
 import datetime
+import math
 import uuid
 from decimal import Decimal
 
@@ -9,6 +10,7 @@ from django.db import transaction
 from logbook import access, clock
 from logbook.actions import standing
 from logbook.actions.two_people import eases
+from logbook.cases import rows, text
 from logbook.errors import conflict, invalid
 from logbook.journal import append
 from logbook.models import (
@@ -115,8 +117,15 @@ def _overridden(
         wrong["until_on"] = ["Say until which day. A part in use is looked at again."]
     if until_on is not None and until_on < clock.today(a.location.component.site.time_zone):
         wrong["until_on"] = ["This day has passed."]
+    longest = _longest(a)
+    if until_on is not None and longest is not None and until_on > longest:
+        wrong["until_on"] = [
+            f"The owner's longest interval allows {longest:%-d %b %Y} at the latest."
+        ]
     if verdict == Verdict.RESTRICT and not limit.strip():
         wrong["limit"] = ["Name the limit, such as “up to 12 t”."]
+    if verdict != Verdict.RESTRICT and limit.strip():
+        wrong["limit"] = ["A limit goes with “restrict” alone; its sentence names it."]
     if wrong:
         raise invalid("The other verdict is not complete yet.", wrong)
     return {
@@ -125,6 +134,17 @@ def _overridden(
         "until_at": until_at,
         "limit": limit.strip(),
     }
+
+
+def _longest(a: Assessment) -> datetime.date | None:
+    """The last day that the owner's longest interval leaves; None where the basis gives none."""
+    if a.basis is None:
+        return None
+    days = text.read(a.basis.body).get("criteria", {}).get("longest_interval_days")
+    look = rows.last_look(a.location, a.crack)
+    if days is None or look is None:
+        return None
+    return look.inspection.found_on + datetime.timedelta(days=math.floor(days))
 
 
 def _check_grounds(a: Assessment, decision: str, verdict: object, grounds: str) -> None:

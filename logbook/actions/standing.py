@@ -14,6 +14,7 @@ The row does not know what day it is: ``reading`` judges lapse against today and
 """
 
 import datetime
+import json
 from dataclasses import dataclass
 from decimal import Decimal
 from typing import Any
@@ -157,6 +158,13 @@ def _what(location: Location, crack: Crack | None) -> _What | None:
             assessment=assessment,
             disposition=disposition,
         )
+    if crack is None:
+        work = rows_of_case.newest_work(location)
+        if work is not None and work.sort == Repair.Sort.REMOVAL and not _looked_since(work):
+            return None  # the part is gone
+        if work is not None and disposition and disposition.leaf.index < work.leaf.index:
+            # What was signed before the work says nothing of the part as it is now.
+            disposition = None
     if assessment is None:
         return None
     what = (
@@ -167,6 +175,12 @@ def _what(location: Location, crack: Crack | None) -> _What | None:
     if _open_repair(location, crack) is not None:
         return _What(**{**what.__dict__, "held": True})
     return what
+
+
+def _looked_since(work: Repair) -> bool:
+    return work.location.findings.filter(
+        leaf__index__gt=work.leaf.index, strike_out__isnull=True
+    ).exists()
 
 
 def _unsigned(a: Assessment, site: Site) -> _What:
@@ -196,7 +210,7 @@ def _signed(a: Assessment, d: Disposition) -> _What:
         due_at = until_at = None
     confirmed = hasattr(d, "restriction_confirmed")
     newer = a.leaf.index > d.leaf.index
-    stricter = newer and strictness(a.verdict) > strictness(d.verdict)
+    stricter = newer and (strictness(a.verdict) > strictness(d.verdict) or _lower_limit(a, d))
     earlier = newer and (_before(a.until_on, d.until_on) or _before(a.until_at, until_at))
     if not (stricter or earlier):
         return _What(
@@ -220,6 +234,23 @@ def _signed(a: Assessment, d: Disposition) -> _What:
         assessment=a,
         disposition=d,
     )
+
+
+def _lower_limit(a: Assessment, d: Disposition) -> bool:
+    """A newer restriction to less load than the signed one. A limit that an engineer wrote in
+    words of their own is not known as a number, so that any newer one counts as lower."""
+    if a.verdict != Verdict.RESTRICT or d.verdict != Verdict.RESTRICT or a.limit == d.limit:
+        return False
+    new, old = load_factor(a), load_factor(d.assessment)
+    return new is None or old is None or d.limit != d.assessment.limit or new < old
+
+
+def load_factor(a: Assessment) -> float | None:
+    """The part of the largest load that a restriction leaves; None where the outcome has none."""
+    if a.outcome_text is None:
+        return None
+    restriction = json.loads(a.outcome_text).get("restriction")
+    return None if restriction is None else float(restriction["factor"])
 
 
 def held_by_verdict(

@@ -233,9 +233,10 @@ class InspectionSent(serializers.Serializer[Any]):
     surface = serializers.CharField()
     coverage = serializers.CharField()
     fell_short = serializers.CharField(required=False, allow_blank=True)
+    confirm_counter = serializers.BooleanField(required=False)
     inspector_name = serializers.CharField()
     qualification_level = serializers.CharField()
-    qualification_valid_until = serializers.DateField()
+    qualification_valid_until = serializers.DateField(required=False)
     findings = FindingSent(many=True)
 
 

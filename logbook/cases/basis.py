@@ -75,6 +75,27 @@ def check_basis_body(body: dict[str, Any]) -> None:
     _check_pairs(body)
 
 
+def check_material(body: dict[str, Any]) -> None:
+    """Refuse a material that no case could carry; name the value and the reason."""
+    case = {
+        "case": 1,
+        "crack": {"kind": "plate-through-centre", "found": True, "length_mm": 1},
+        "body": {"width_mm": 100, "thickness_mm": 10},
+        "material": body,
+        "loading": {"peak": {"membrane_mpa": 1}},
+    }
+    try:
+        assessment.read_case(text.exact(case))
+    except assessment.CaseRefused as refused:
+        where = refused.where.removeprefix("material.")
+        raise invalid("The computation could not read this.", {where: [refused.why]}) from None
+
+
+def kinds() -> list[tuple[str, str]]:
+    """Name and words of every kind of crack that is computed."""
+    return [(kind.name, kind.words) for kind in assessment.KINDS.values()]
+
+
 def _check_pairs(body: dict[str, Any]) -> None:
     for name, keys in (
         ("depth_ratio", {"value", "source"}),

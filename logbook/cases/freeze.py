@@ -12,6 +12,7 @@ from typing import Any
 import assessment
 from logbook import clock
 from logbook.cases import rows, text
+from logbook.entry import NO_LEVEL
 from logbook.models import (
     Basis,
     Component,
@@ -47,6 +48,13 @@ def freeze(location: Location, crack: Crack | None) -> FrozenCase:
         return _none(None, _no_basis(location))
     body = text.read(basis.body)
     look = rows.last_look(location, crack)
+    work = rows.newest_work(location) if crack is None else None
+    if work is not None and (look is None or look.leaf.index < work.leaf.index):
+        return _none(
+            basis,
+            f"{work.get_sort_display().capitalize()} on {_day(work.done_on)}, and no look at this "
+            "place is in the book since: log the inspection after it.",
+        )
     if look is None:
         return _none(basis, "Nobody has looked here yet.")
     try:
@@ -367,6 +375,8 @@ def _shortfalls(inspection: Inspection, look: Finding) -> list[str]:
     ):
         if until is not None and until < inspection.found_on:
             said.append(f"{what} expired {_day(until)}")
+    if inspection.qualification_level.strip().lower() in NO_LEVEL:
+        said.append("the inspector had no qualification for the method")
     if inspection.fell_short:
         said.append(f"not as the procedure asks: {inspection.fell_short}")
     if look.part_not_seen:

@@ -28,6 +28,17 @@ def adopted_basis(location: Location) -> Basis | None:
     )
 
 
+def newest_work(location: Location) -> Repair | None:
+    """The newest repair, exchange or removal at a place after which no crack goes on: what was
+    found and decided there before it says nothing of the part as it is now."""
+    return (
+        Repair.objects.filter(location=location, closes=True, return_to_service__isnull=False)
+        .select_related("leaf")
+        .order_by("-leaf__index")
+        .first()
+    )
+
+
 def measurements(crack: Crack) -> list[Measurement]:
     """The sizes that count, oldest first: not struck out, and since the newest start.
 
@@ -72,7 +83,8 @@ def last_look(location: Location, crack: Crack | None) -> Finding | None:
     rows = rows.filter(crack=crack) if crack is not None else rows.filter(crack__isnull=True)
     return (
         rows.select_related("inspection__leaf", "leaf")
-        .order_by("-inspection__found_on", "-leaf__index")
+        # A size written anew keeps the place of the one it corrects.
+        .order_by("-inspection__found_on", "-inspection__leaf__index", "-leaf__index")
         .first()
     )
 

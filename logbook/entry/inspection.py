@@ -25,6 +25,10 @@ SLIPPED = Decimal(5)
 # No part is a kilometre long, and the book has no room for more digits.
 TOO_LARGE_MM = Decimal(1_000_000)
 NEW = "new"
+CONFIRMED = (True, "on", "true", "yes", "1")
+NO_LEVEL = ("none", "no")
+# Nothing in service was looked at for this book before: the year has slipped.
+EARLIEST_YEAR = 1970
 
 
 class _Reader:
@@ -91,11 +95,14 @@ def read_inspection(data: Mapping[str, Any], known: Known) -> InspectionDraft:
         "inspector_name": r.line("inspector_name", 120, "Say who looked."),
         "qualification_level": r.line("qualification_level", 60, "Say which level, or none."),
         "qualification_valid_until": r.read(
-            "qualification_valid_until", text.date, "Say until when the qualification is valid."
+            "qualification_valid_until",
+            text.date,
+            None if _unqualified(data) else "Say until when the qualification is valid.",
         ),
     }
     _check_dates(r, head, known)
     _check_counter(r, head, known)
+    _check_jump(r, head, known)
     findings = _findings(r, data.get("findings"), known)
     if r.complaints:
         raise invalid("Some of this does not fit yet. The rest is kept.", r.complaints)
@@ -107,12 +114,19 @@ def _no_instrument(data: Mapping[str, Any]) -> bool:
     return str(data.get("instrument", "")).strip().lower() in ("", "none", "eye")
 
 
+def _unqualified(data: Mapping[str, Any]) -> bool:
+    """Someone without a level says so; the look is then one for an engineer."""
+    return str(data.get("qualification_level", "")).strip().lower() in NO_LEVEL
+
+
 def _check_dates(r: _Reader, head: dict[str, Any], known: Known) -> None:
     found_on = head["found_on"]
     if found_on is None:
         return
     if found_on > known.today:
         r.complain("found_on", f"{found_on:%-d %b %Y} is in the future. Check the date.")
+    if found_on.year < EARLIEST_YEAR:
+        r.complain("found_on", f"The year {found_on.year} cannot be right. Check the date.")
     last = known.last_found_on
     if last is not None and found_on < last and not head["late_why"]:
         r.complain(
@@ -132,6 +146,28 @@ def _check_counter(r: _Reader, head: dict[str, Any], known: Known) -> None:
             "counter",
             f"The counter stood at {known.last_counter.normalize():f} at the last look; it cannot "
             "run back. If it was replaced or reset, say so in “counter replaced”.",
+        )
+
+
+# A reading this many times what the days since the last one explain looks like a slipped digit.
+JUMP = Decimal(20)
+
+
+def _check_jump(r: _Reader, head: dict[str, Any], known: Known) -> None:
+    """A leap of the counter is asked back once: it would put every place out of use."""
+    counter, found_on, last = head["counter"], head["found_on"], known.last_counter
+    if counter is None or found_on is None or last is None:
+        return
+    if known.per_day is None or known.last_found_on is None:
+        return
+    days = max((found_on - known.last_found_on).days, 0) + 30
+    explained = last + JUMP * days * known.per_day
+    if counter > explained and r.data.get("confirm_counter") not in CONFIRMED:
+        r.complain(
+            "counter",
+            f"The counter stood at {last.normalize():f} at the last look, and now "
+            f"{counter.normalize():f}. Check the digits. If it is right, tick “this reading is "
+            "right”.",
         )
 
 
@@ -219,6 +255,8 @@ def _location(r: _Reader, known: Known) -> int | NewLocation | None:
             n.line("name", 120, "Give the place a short name."),
             n.line("described", 500, "Say where on the part it is, so that others find it."),
         )
+        if made.name.casefold() in {one.name.casefold() for one in known.locations.values()}:
+            n.complain("name", "A place of this name is listed already: answer there.")
         r.complaints.update(n.complaints)
         return made
     given = str(r.data.get("location", "")).strip()
@@ -280,7 +318,7 @@ def _sizes(r: _Reader, place: KnownLocation | None, last: KnownCrack | None) -> 
     why_smaller = r.line("why_smaller", 500, None)
     _check_room(r, place, depth, length)
     if last is not None and not r.complaints:
-        confirmed = r.data.get("confirm_unlikely") in (True, "on", "true", "yes", "1")
+        confirmed = r.data.get("confirm_unlikely") in CONFIRMED
         _check_history(r, "depth", depth, last.depth_mm, last.depth_sd_mm, why_smaller, confirmed)
         _check_history(
             r, "length", length, last.length_mm, last.length_sd_mm, why_smaller, confirmed

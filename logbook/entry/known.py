@@ -35,5 +35,6 @@ class Known:
     today: datetime.date
     last_found_on: datetime.date | None = None
     last_counter: Decimal | None = None
+    per_day: Decimal | None = None
     locations: Mapping[int, KnownLocation] = field(default_factory=dict)
     cracks: Mapping[int, KnownCrack] = field(default_factory=dict)

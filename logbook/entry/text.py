@@ -6,6 +6,8 @@ import uuid
 from decimal import Decimal
 
 NUMBER = re.compile(r"^\d{1,9}(?:[.,]\d+)?$")
+# 1,000 is one thousand to some and one to others; 0,125 can only be the one.
+THOUSANDS = re.compile(r"^[1-9]\d{0,2},\d{3}$")
 SPACES = re.compile(r"[\s\u00a0\u2009\u202f]")
 
 
@@ -26,6 +28,11 @@ def decimal(text: object, *, places: int = 3) -> Decimal:
     if "." in bare and "," in bare:
         raise Unreadable(
             f'"{quoted(text)}" has both comma and point. Write it without a thousands sign.'
+        )
+    if THOUSANDS.match(bare):
+        raise Unreadable(
+            f'"{quoted(text)}" can be read as thousands or as a decimal. Write it without a '
+            "thousands sign, or with one digit more or less behind the decimal sign."
         )
     if not NUMBER.match(bare):
         raise Unreadable(

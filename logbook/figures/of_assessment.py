@@ -23,12 +23,14 @@ def figures_of(
     assessment: Assessment | None,
     *,
     disposition: Disposition | None = None,
+    binds: tuple[date | None, Decimal | None] | None = None,
     decimal_sign: str = ".",
     up_to: int | None = None,
 ) -> tuple[Figure, ...]:
     """Size against usage, the diagram, the crack to scale: those that there are numbers for.
 
     disposition : what is in force, where it is signed: its date and counter are drawn
+    binds : date and counter that bind now, where they are not the proposal's own
     up_to : index of the last leaf that counts, for a record or a past day
     """
     case = _document(assessment.case_text if assessment else None)
@@ -41,7 +43,7 @@ def figures_of(
     if measured:
         of = drawn_size(measured)
         sizing = _sizing(assessment)
-        until_on, until_at = _next_look(binding)
+        until_on, until_at = _next_look(binding) if binds is None else binds
         story = size_story(
             what=what,
             counter=counts(component.counter_unit),

@@ -20,7 +20,9 @@ class Licence(models.Model):
 
     class Meta:
         constraints = [
-            models.UniqueConstraint(fields=["body", "number"], name="licence_number_once"),
+            models.UniqueConstraint(
+                fields=["body", "number", "valid_from"], name="licence_number_once"
+            ),
             models.CheckConstraint(
                 condition=models.Q(valid_to__gte=models.F("valid_from")),
                 name="licence_dates_in_order",

@@ -7,12 +7,13 @@ from typing import Any
 from django.contrib.auth.decorators import login_required
 from django.http import HttpResponse
 from django.shortcuts import redirect, render
-from django.utils.translation import gettext as _
+from django.utils.translation import gettext_lazy as _
 from django.views.decorators.http import require_POST
 
 from logbook import access
 from logbook.actions.answer import answer_now
 from logbook.actions.revise_basis import adopt_basis, eased_criteria, revise_basis
+from logbook.cases.basis import kinds
 from logbook.cases.rows import adopted_basis
 from logbook.errors import Refusal, not_permitted
 from logbook.models import Basis, Location, Material
@@ -124,6 +125,9 @@ def revise(request: Asked, pk: int) -> HttpResponse:
     materials = Material.objects.filter(site=place.component.site).order_by("name", "-revision")
     newest = place.bases.order_by("-revision").first()
     body = _read(newest.body) if newest is not None else {}
+    chosen = request.POST.get("kind") or request.GET.get("kind") or str(body.get("kind", ""))
+    if chosen not in dict(kinds()) or "choose" in request.GET:
+        return _choose_kind(request, place, chosen)
     if request.method == "POST":
         form = BasisForm(request.POST, materials=materials)
         values = Values.posted(request.POST)
@@ -137,12 +141,11 @@ def revise(request: Asked, pk: int) -> HttpResponse:
                 for sentence in left:
                     form.add_error(None, sentence)
     else:
-        kind = request.GET.get("kind", "") or str(body.get("kind", ""))
         reference = body.get("material_ref") or {}
-        start = {"kind": kind or None, "material": reference.get("id", "")}
+        start = {"kind": chosen, "material": reference.get("id", "")}
         form = BasisForm(materials=materials, initial=start)
         have = {name: part for name, part in body.items() if name not in ASKED_APART}
-        values = Values.of(names_for(kind), have, body.get("sources", {}))
+        values = Values.of(names_for(chosen), have, body.get("sources", {}))
     return render(
         request,
         "logbook/basis_form.html",
@@ -152,15 +155,47 @@ def revise(request: Asked, pk: int) -> HttpResponse:
             "values": values,
             "newest": newest,
             "adopted": adopted_basis(place),
+            "kind_words": dict(kinds())[chosen],
         },
         status=form_status(form),
+    )
+
+
+# What is the body: the first of the questions that find the kind of crack.
+BODIES = (
+    ("plate", _("a plate, or a wall that may be taken as flat")),
+    ("hole", _("a plate, beside a hole")),
+    ("lug", _("a lug")),
+    ("cylinder", _("a cylinder or a pipe")),
+    ("bar", _("a round bar or shaft")),
+    ("weld-toe", _("a plate, at the toe of a weld")),
+    ("specimen", _("a test specimen")),
+    ("tabulated", _("another body")),
+)
+
+
+def _choose_kind(request: Asked, place: Location, chosen: str) -> HttpResponse:
+    """What is the body, where does it start, does it go through: as links, without script."""
+    named = kinds()
+    groups = [
+        (words, [(name, said) for name, said in named if name.startswith(start)])
+        for start, words in BODIES
+    ]
+    return render(
+        request,
+        "logbook/basis_kind.html",
+        {
+            **_around(request, place),
+            "groups": [(words, found) for words, found in groups if found],
+            "chosen": chosen,
+        },
     )
 
 
 def _write(request: Asked, place: Location, typed: dict[str, Any], values: Values) -> Basis:
     material = access.material_for(request.user, typed["material"])
     if material.site_id != place.component.site_id:
-        raise not_permitted(_("This material is registered at another site."))
+        raise not_permitted(str(_("This material is registered at another site.")))
     body = values.body()
     sources = {**values.sources(), "material": material.source}
     reference = {"id": material.pk, "name": material.name, "revision": material.revision}

@@ -11,10 +11,10 @@ from logbook import access
 from logbook.actions import standing as standings
 from logbook.figures.drawing import Figure
 from logbook.figures.of_assessment import figures_of
-from logbook.models import Assessment, Crack, Disposition, Finding, Repair
+from logbook.models import Assessment, Crack, Disposition, Finding, Repair, Verdict
 
 from .asked import Asked, may
-from .lines import finding_words
+from .lines import Line, finding_words
 from .places import standing_line
 
 
@@ -46,7 +46,8 @@ def crack(request: Asked, pk: int) -> HttpResponse:
             "findings": [(finding, finding_words(finding, sign)) for finding in findings],
             "proposal": proposal,
             "signed": signed,
-            "figures": figures(one, proposal, signed, sign),
+            "figures": figures(one, proposal, signed, sign, line),
+            "shown": _shown(line, proposal),
             "working": working(proposal),
             "to_measure": to_measure(proposal),
             "repairs": Repair.objects.filter(crack=one).select_related("leaf"),
@@ -57,11 +58,29 @@ def crack(request: Asked, pk: int) -> HttpResponse:
 
 
 def figures(
-    one: Crack, proposal: Assessment | None, signed: Disposition | None, decimal_sign: str
+    one: Crack,
+    proposal: Assessment | None,
+    signed: Disposition | None,
+    decimal_sign: str,
+    line: Line | None = None,
 ) -> tuple[Figure, ...]:
-    """What is signed is drawn as signed only while nothing newer was proposed."""
+    """What is signed is drawn as signed only while nothing newer was proposed. With ``line`` the
+    next look is the one that binds: a later one that is only proposed is no permission."""
     binding = signed if signed is not None and signed.assessment == proposal else None
-    return figures_of(one, proposal, disposition=binding, decimal_sign=decimal_sign)
+    binds = None
+    if line is not None:
+        stands_still = line.verdict in (Verdict.REFER, Verdict.WITHDRAW)
+        binds = (None, None) if stands_still else (line.reading.due_on, line.reading.due_at)
+        if line.reading.signed:
+            binding = signed
+    return figures_of(one, proposal, disposition=binding, binds=binds, decimal_sign=decimal_sign)
+
+
+def _shown(line: Line | None, proposal: Assessment | None) -> Assessment | None:
+    """Whose reasons stand beside the verdict: those of what binds."""
+    if line is None or not line.reading.signed or line.standing.disposition is None:
+        return proposal
+    return line.standing.disposition.assessment
 
 
 def outcome_of(proposal: Assessment | None) -> dict[str, Any]:

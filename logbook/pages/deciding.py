@@ -6,24 +6,28 @@ from django.contrib import messages
 from django.contrib.auth.decorators import login_required
 from django.http import HttpResponse
 from django.shortcuts import redirect, render
+from django.urls import reverse
 from django.utils.translation import gettext as _
 
 from logbook import access, clock
 from logbook.actions import standing as standings
 from logbook.actions.confirm_restriction import confirm_restriction
-from logbook.actions.defer_inspection import approve_deferral, ask_deferral
+from logbook.actions.defer_inspection import approve_deferral, ask_deferral, latest_day
+from logbook.actions.review import must_be_newest
 from logbook.actions.review import review as review_proposal
 from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
-from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Review
+from logbook.errors import Refusal
+from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Review, Verdict
 
 from .asked import Asked, may
 from .cracks import figures, working
 from .forms.deciding import ApproveForm, ConfirmForm, DeferForm, ReviewForm, SignForm
-from .lines import proposed_sentence
+from .lines import proposed_sentence, unconfirmed
 from .places import standing_line
 from .refusals import attempt, form_status
 from .writing import by as by_words
+from .writing import day
 
 
 def around(request: Asked, assessment: Assessment) -> dict[str, Any]:
@@ -142,9 +146,24 @@ def sign(request: Asked, pk: int) -> HttpResponse:
             "reviewed_until": by_words(one.until_on, one.until_at, component.counter_unit, sign_of),
             "may_sign": may(request, site, "sign"),
             "signed": getattr(one, "disposition", None),
+            "passed": _passed(one),
+            "newer": reverse("crack", args=[assessment.crack_id])
+            if assessment.crack_id
+            else reverse("location", args=[assessment.location_id]),
         },
         status=form_status(form),
     )
+
+
+def _passed(one: Review) -> bool:
+    """Not signed, and something newer is in the book: nothing to read as permission."""
+    if hasattr(one, "disposition"):
+        return False
+    try:
+        must_be_newest(one.assessment)
+    except Refusal:
+        return True
+    return one.assessment.reviews.filter(leaf__index__gt=one.leaf.index).exists()
 
 
 def _sign(request: Asked, one: Review, typed: dict[str, Any]) -> Disposition:
@@ -159,6 +178,15 @@ def _sign(request: Asked, one: Review, typed: dict[str, Any]) -> Disposition:
     )
 
 
+def _signed_sentence(one: Disposition, sign_of: str) -> str:
+    said = proposed_sentence(
+        one.verdict, one.until_on, one.until_at, one.limit, one.location.component, sign_of
+    )
+    if one.verdict == Verdict.RESTRICT and not hasattr(one, "restriction_confirmed"):
+        return unconfirmed(said)
+    return said
+
+
 @login_required
 def signed(request: Asked, pk: int) -> HttpResponse:
     """What was signed, by whom, and what can be done from here."""
@@ -171,9 +199,7 @@ def signed(request: Asked, pk: int) -> HttpResponse:
         {
             **around(request, one.assessment),
             "signed": one,
-            "signed_sentence": proposed_sentence(
-                one.verdict, one.until_on, one.until_at, one.limit, component, sign_of
-            ),
+            "signed_sentence": _signed_sentence(one, sign_of),
             "signed_until": by_words(one.until_on, one.until_at, component.counter_unit, sign_of),
             "newest": not hasattr(one, "superseded_by"),
             "record": getattr(one, "record", None),
@@ -216,7 +242,16 @@ def defer(request: Asked, pk: int) -> HttpResponse:
         done = attempt(form, ask_deferral, request.user, one.pk, **form.cleaned_data)
         if done is not None:
             return redirect("signed", one.pk)
+    latest = latest_day(one)
     about = [_("Nothing changes until a signatory, who is someone else, has approved it.")]
+    if latest is None:
+        about.append(
+            _("It cannot be put off: the crack's life allows no day after the one that is set.")
+        )
+    else:
+        about.append(
+            _("The latest day that the crack's life allows is %(day)s.") % {"day": day(latest)}
+        )
     return _form_page(
         request, form, one.assessment, _("Put the next look off"), _("Ask for it"), about=about
     )

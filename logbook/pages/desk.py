@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 from django.contrib.auth.decorators import login_required
 from django.core.paginator import Paginator
-from django.db.models import Min, Q, QuerySet
+from django.db.models import F, Min, Q, QuerySet
 from django.http import HttpResponse
 from django.shortcuts import render
 from django.urls import reverse
@@ -76,7 +76,12 @@ def _unsettled(sites: list[Site]) -> QuerySet[Standing]:
     """What is not simply in force: proposals, bindings, what is held."""
     return (
         Standing.objects.filter(site__in=sites)
-        .filter(~Q(state=Standing.State.IN_FORCE) | Q(held=True))
+        .filter(
+            ~Q(state=Standing.State.IN_FORCE)
+            | Q(held=True)
+            # A newer proposal that asks for nothing stricter: the old date runs out meanwhile.
+            | ~Q(assessment=F("disposition__assessment"))
+        )
         .select_related(*RELATED)
     )
 
@@ -103,7 +108,10 @@ def _standing_matter(one: Line, review: Review | None) -> Matter:
     if one.standing.assessment is None:
         link = reverse("in-force", args=[one.component.pk])
         why = _("An entry has no verdict yet.")
-    elif one.reading.signed:
+    elif one.reading.signed and not one.reading.held and review is None:
+        link = reverse("proposal", args=[one.standing.assessment.pk])
+        why = _("A newer look, and nothing stricter is proposed; waits for a review.")
+    elif one.reading.signed and one.reading.held:
         link = (
             reverse("crack", args=[one.crack.pk])
             if one.crack is not None

@@ -1,6 +1,8 @@
 """Logging an inspection, and the answer that comes back."""
 
+import datetime
 import hashlib
+from decimal import Decimal
 from typing import Any
 
 from django.contrib.auth.decorators import login_required
@@ -27,8 +29,9 @@ from logbook.models import (
     Standing,
 )
 
+from . import writing
 from .asked import Asked, may
-from .forms.inspection import HEAD, Block, InspectionForm
+from .forms.inspection import HEAD, Block, Box, InspectionForm
 from .lines import RELATED, finding_words, lines, size_words, strictest_first
 
 
@@ -91,7 +94,28 @@ def _check_page(request: Asked, form: InspectionForm, draft: InspectionDraft) ->
         block.last = _last(block, sign)
         sizes = size_words(finding.sizes, sign) if finding.sizes is not None else ""
         findings.append((block, finding, sizes))
-    return render(request, "logbook/inspect_check.html", {**_around(form), "findings": findings})
+    boxes = [*form.head, *(box for box in form.later if box.value)]
+    told = {block.location.pk for block in answered if block.location is not None}
+    return render(
+        request,
+        "logbook/inspect_check.html",
+        {
+            **_around(form),
+            "findings": findings,
+            "head": [(box.label, _as_read(box, draft, sign)) for box in boxes],
+            "untold": [one for one, _blocks in form.places if one and one.pk not in told],
+        },
+    )
+
+
+def _as_read(box: Box, draft: InspectionDraft, decimal_sign: str) -> str:
+    """What the book will hold, not what was typed: a slipped sign shows here."""
+    value = getattr(draft, box.name, box.value)
+    if isinstance(value, datetime.date):
+        return writing.day(value)
+    if isinstance(value, Decimal):
+        return writing.number(value, decimal_sign)
+    return value or ""
 
 
 def _last(block: Block, decimal_sign: str) -> str:

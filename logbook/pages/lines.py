@@ -31,6 +31,7 @@ RELATED = (
     "assessment",
     "disposition__signatory",
     "disposition__licence",
+    "disposition__assessment",
     "last_finding__measurement",
     "last_finding__inspection",
 )
@@ -80,6 +81,12 @@ class Line:
         return self.reading.held
 
     @property
+    def past_counter(self) -> bool:
+        """Overdue by usage: the date is then not what to plan by."""
+        counter, due = self.standing.counter, self.reading.due_at
+        return due is not None and counter is not None and counter >= due
+
+    @property
     def hand(self) -> str:
         """Whose hand the line's rule shows: signed or in the book."""
         return "signed" if self.reading.signed and not self.reading.lapsed else ""
@@ -93,10 +100,21 @@ def line(standing: Standing, decimal_sign: str) -> Line:
     return Line(
         standing=standing,
         reading=reading,
-        sentence=sentence(reading, until, standing.site),
+        sentence=sentence(reading, until, standing.site, _past(standing, today, decimal_sign)),
         state=state_words(reading),
         until=until,
     )
+
+
+def _past(standing: Standing, today: datetime.date, decimal_sign: str) -> str:
+    """Of date and counter only what has passed."""
+    due_on, due_at, counter = standing.due_on, standing.due_at, standing.counter
+    if due_on is not None and not due_on < today:
+        due_on = None
+    if due_at is not None and (counter is None or counter < due_at):
+        due_at = None
+    unit = standing.location.component.counter_unit
+    return writing.by(due_on, due_at, unit, decimal_sign)
 
 
 def lines(rows: Iterable[Standing], decimal_sign: str) -> list[Line]:
@@ -107,13 +125,13 @@ def strictest_first(rows: Iterable[Line]) -> list[Line]:
     return sorted(rows, key=lambda one: (-one.edged, -strictness(one.verdict)))
 
 
-def sentence(reading: standings.Reading, until: str, site: Site) -> str:
+def sentence(reading: standings.Reading, until: str, site: Site, past: str = "") -> str:
     """What the crew does now, in one sentence or two."""
     if reading.state == Standing.State.NOT_ASSESSED:
         return _("No verdict yet: do not return it to service.")
     if reading.lapsed:
-        return _("Its time was up %(until)s. Not to be used until it has been looked at.") % {
-            "until": until
+        return _("Its time was up at %(past)s. Not to be used until it has been looked at.") % {
+            "past": past or until
         }
     said = verdict_sentence(
         reading.verdict, until, reading.limit, site.on_call_name, site.on_call_phone
@@ -121,10 +139,15 @@ def sentence(reading: standings.Reading, until: str, site: Site) -> str:
     if reading.held and reading.verdict in (Verdict.CONTINUE, Verdict.WATCH):
         return _("Not to be used until it is signed. Then: %(said)s") % {"said": said}
     if reading.held and reading.verdict == Verdict.RESTRICT:
-        return _("Not to be used until its limiter or tag is confirmed. Then: %(said)s") % {
-            "said": said
-        }
+        return unconfirmed(said)
     return said
+
+
+def unconfirmed(said: str) -> str:
+    """A restriction is no permission before its limiter or tag is confirmed."""
+    return _("Not to be used until its limiter or tag is confirmed. Then: %(said)s") % {
+        "said": said
+    }
 
 
 def verdict_sentence(verdict: str, until: str, limit: str, name: str, phone: str) -> str:

@@ -110,6 +110,7 @@ def repair(request: Asked, pk: int) -> HttpResponse:
     if request.method == "POST" and form.is_valid():
         returned = attempt(form, _return, request, one.pk, form.cleaned_data)
         if returned is not None:
+            answer_now(returned.leaf_id)
             return redirect("repair", one.pk)
     return render(
         request,

@@ -2,6 +2,7 @@
 
 import hashlib
 import json
+from decimal import Decimal
 from typing import Any
 
 from django.contrib.auth.decorators import login_required
@@ -322,8 +323,11 @@ def _unmarked(component: Component, place: Location) -> list[Location]:
 def new_material(request: Asked, slug: str) -> HttpResponse:
     """A material, or the next revision of one: values by name."""
     one = access.site_for(request.user, slug, "engineer")
+    given = request.GET.get("from")
+    before = access.material_for(request.user, given, "engineer") if given else None
     if request.method == "POST":
         form, values = MaterialForm(request.POST), Values.posted(request.POST)
+        values.sourced = False
         if form.is_valid():
             try:
                 typed = form.cleaned_data
@@ -341,13 +345,24 @@ def new_material(request: Asked, slug: str) -> HttpResponse:
                 for sentence in left:
                     form.add_error(None, sentence)
     else:
-        form, values = MaterialForm(), Values.of(MATERIAL, {}, {})
+        form = MaterialForm(initial=_revised(before))
+        values = Values.of(MATERIAL, _body_of(before), {})
+        values.sourced = False
     return render(
         request,
         "logbook/material_form.html",
         {"tab": "index", "site": one, "foot_zone": one.time_zone, "form": form, "values": values},
         status=form_status(form),
     )
+
+
+def _revised(before: Material | None) -> dict[str, str]:
+    """The next revision of a material starts from the one before; its source is written anew."""
+    return {} if before is None else {"name": before.name}
+
+
+def _body_of(before: Material | None) -> dict[str, Any]:
+    return {} if before is None else json.loads(before.body, parse_float=Decimal)
 
 
 @login_required
@@ -361,6 +376,7 @@ def material(request: Asked, pk: int) -> HttpResponse:
             "site": one.site,
             "foot_zone": one.site.time_zone,
             "material": one,
+            "may_engineer": may(request, one.site, "engineer"),
             "values": [
                 (line.label.removeprefix("material, "), line.value)
                 for line in case_lines({"material": json.loads(one.body)}, {})

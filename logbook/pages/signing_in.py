@@ -3,6 +3,8 @@
 from typing import Any
 
 from django import forms
+from django.contrib import messages
+from django.contrib.auth import update_session_auth_hash
 from django.contrib.auth.decorators import login_not_required, login_required
 from django.contrib.auth.forms import AuthenticationForm
 from django.contrib.auth.views import LoginView, LogoutView
@@ -14,10 +16,13 @@ from django.utils.translation import gettext_lazy as _
 from django.views.decorators.http import require_POST
 
 from logbook import clock
+from logbook.actions.change_password import change_password
 from logbook.models import Licence, Membership
 
-from .forms.fields import MISSING
+from .asked import Asked
+from .forms.fields import MISSING, Password
 from .frame import LOOKS
+from .refusals import attempt, form_status
 
 A_YEAR = 365 * 24 * 3600
 
@@ -86,4 +91,36 @@ def me(request: HttpRequest) -> HttpResponse:
         request,
         "logbook/me.html",
         {"roles": roles, "licences": licences, "signs": person.DecimalSign.choices},
+    )
+
+
+class PasswordForm(forms.Form):
+    password = Password(_("The password you have now"))
+    new = Password(_("The new password"))
+    again = Password(_("The new password again"))
+
+    def clean(self) -> dict[str, Any]:
+        typed = super().clean() or {}
+        if typed.get("new") and typed.get("again") and typed["new"] != typed["again"]:
+            self.add_error("again", _("This is not the same as the line above."))
+        return typed
+
+
+@login_required
+def new_password(request: Asked) -> HttpResponse:
+    form = PasswordForm(request.POST or None)
+    if request.method == "POST" and form.is_valid():
+        typed = form.cleaned_data
+        changed = attempt(
+            form, change_password, request.user, typed["password"], typed["new"], request
+        )
+        if changed is not None:
+            update_session_auth_hash(request, changed)
+            messages.success(request, _("Your password was changed."))
+            return redirect("me")
+    return render(
+        request,
+        "logbook/form.html",
+        {"form": form, "heading": _("A new password"), "verb": _("Change it"), "about": []},
+        status=form_status(form),
     )

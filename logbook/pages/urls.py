@@ -25,6 +25,7 @@ urlpatterns = [
     path("sign-out/", signing_in.sign_out, name="sign-out"),
     path("look/", signing_in.set_look, name="look"),
     path("me/", signing_in.me, name="me"),
+    path("me/password/", signing_in.new_password, name="new-password"),
     path("index/", places.index, name="index"),
     path("desk/", desk.desk, name="desk"),
     path("records/", records.records, name="records"),

@@ -78,7 +78,9 @@ def gather_disposition(record: Record, disposition: Disposition) -> RecordConten
 def gather_deferral(record: Record, deferral: Deferral) -> RecordContent:
     """An inspection put off: the decision stays, its date moves, two people answer for it."""
     disposition, zone = deferral.disposition, record.site.time_zone
-    by = until(deferral.new_on, deferral.new_at, _unit(disposition), _sign(disposition))
+    # Where no new counter was given the old one binds on.
+    new_at = disposition.until_at if deferral.new_at is None else deferral.new_at
+    by = until(deferral.new_on, new_at, _unit(disposition), _sign(disposition))
     before = until(
         disposition.until_on, disposition.until_at, _unit(disposition), _sign(disposition)
     )

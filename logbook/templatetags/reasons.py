@@ -14,6 +14,10 @@ register = template.Library()
 
 # The longer phrase first; the last ones catch the single words.
 PLAIN = (
+    ("The assumed crack has no length to compare with the method's.",
+     "Whether this method finds a crack here in time is not known."),
+    ("The assumed crack has no depth to compare with the method's.",
+     "Whether this method finds a crack here in time is not known."),
     ("bounding life divided by the life factor", "its life taken at its worst, cut for safety"),
     ("The bounding reserve on load", "The reserve on load, taken at its worst,"),
     ("At its bounding size", "At the largest size that it may have"),

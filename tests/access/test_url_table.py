@@ -54,6 +54,7 @@ UNSCOPED = (
     "sign-out",
     "look",
     "me",
+    "new-password",
     "index",
     "desk",
     "records",

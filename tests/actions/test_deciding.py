@@ -1,6 +1,7 @@
 """Review, signature and what binds: two people, stated grounds, nothing newer, nothing easier."""
 
 import datetime
+import json
 import threading
 from decimal import Decimal
 
@@ -337,3 +338,37 @@ def test_every_leaf_says_who_and_every_row_fits(deciding: Deciding) -> None:
     assert {"log-inspection", "propose", "review", "sign-disposition", "adopt-basis"} <= kinds
     report = verify()
     assert report.sound, report.faults
+
+
+def test_a_lower_limit_binds_at_once_and_waits_for_its_own_limiter(
+    deciding: Deciding, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """A second restriction to less load is stricter than the one that is signed and confirmed."""
+    from logbook.actions import propose as proposing
+
+    book = deciding.book
+
+    def restricted(percent: int) -> None:
+        outcome = {
+            "disposition": {"verdict": "restrict", "reasons": ["less load"]},
+            "restriction": {"factor": percent / 100},
+            "next_inspection": {"on": "2099-01-01", "usage": None, "governed_by": "rule"},
+            "rules": [{"usage": None, "on": None}],
+        }
+        monkeypatch.setattr(proposing.assessment, "assess", lambda text: outcome)
+        monkeypatch.setattr(proposing.assessment, "outcome_text", lambda made: json.dumps(made))
+
+    restricted(84)
+    crack = deciding.found()
+    d = deciding.sign(deciding.reviewed(crack))
+    confirm_restriction(book.people["crew"], d.pk, "limiter set and sealed")
+    assert not deciding.standing(crack).held
+    restricted(90)
+    deciding.found("3.1", "12", str(crack.number), counter=1010)
+    row = deciding.standing(crack)
+    assert (row.state, row.limit, row.held) == ("in-force", d.limit, False)
+    restricted(78)
+    deciding.found("3.2", "12", str(crack.number), counter=1020)
+    row = deciding.standing(crack)
+    assert (row.state, row.held) == ("proposed-binding", True)
+    assert row.limit.startswith("78 %")

@@ -2,6 +2,7 @@
 
 import datetime
 import uuid
+from dataclasses import replace
 from decimal import Decimal
 from typing import Any
 
@@ -190,7 +191,33 @@ def test_odd_content_is_refused_and_never_a_fault(odd: Any) -> None:
             assert refused.sentence
 
 
-@given(st.decimals(0, 99999, places=3, allow_nan=False))
+@given(st.decimals(0, 99999, places=2, allow_nan=False))
 def test_comma_and_point_read_alike(value: Decimal) -> None:
     typed = f"{value:f}"
     assert text.decimal(typed) == text.decimal(typed.replace(".", ",")) == value
+
+
+def test_someone_without_a_qualification_needs_no_date_for_it() -> None:
+    data = entry(qualification_level="none", qualification_valid_until="")
+    assert read_inspection(data, KNOWN).qualification_valid_until is None
+    with pytest.raises(Refusal):
+        read_inspection(entry(qualification_level="2", qualification_valid_until=""), KNOWN)
+
+
+def test_a_listed_place_is_not_written_as_an_unlisted_one() -> None:
+    name = next(iter(KNOWN.locations.values())).name
+    new = {"name": name.upper(), "described": "there"}
+    with pytest.raises(Refusal) as refused:
+        read_inspection(entry({"new_location": new, "what": "nothing"}), KNOWN)
+    assert "listed already" in refused.value.fields["findings.0.new_location.name"][0]
+
+
+def test_a_leap_of_the_counter_is_asked_back_once() -> None:
+    """20 a day explain about 20 × 20 × (112 + 30) more than the 1,200 of January."""
+    known = replace(KNOWN, per_day=Decimal(20))
+    assert read_inspection(entry(counter="50000"), known).counter == 50000
+    with pytest.raises(Refusal) as refused:
+        read_inspection(entry(counter="126000"), known)
+    assert "Check the digits" in refused.value.fields["counter"][0]
+    data = entry(counter="126000", confirm_counter="yes")
+    assert read_inspection(data, known).counter == 126_000

@@ -46,6 +46,7 @@ HEAD: tuple[tuple[str, Any, Any, str], ...] = (
     ("qualification_valid_until", _("The qualification is valid until"), "", "date"),
 )
 LATER = (
+    ("confirm_counter", _("If the counter was asked back: this reading is right"), "", "tick"),
     ("late_why", _("Why so late, if the look was before the last one"), "", "text"),
     (
         "counter_replaced_why",
@@ -85,6 +86,9 @@ class Block:
 
     @property
     def answered(self) -> bool:
+        """“No, nothing new” takes back what was typed under another answer."""
+        if self.further and not self.typed.get("what"):
+            return False
         return any(value.strip() for value in self.typed.values())
 
     @property

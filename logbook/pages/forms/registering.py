@@ -10,16 +10,6 @@ from logbook.models import Role
 from .deciding import SignatureForm
 from .fields import Choice, Day, Number, Password, Pick, Text, offer
 
-# What is the body, where does it start, does it go through.
-KINDS = [
-    ("plate-through-centre", _("in a plate, away from its edges, through the wall")),
-    ("plate-through-edge", _("in a plate, from one edge, through the wall")),
-    ("plate-surface", _("in a plate, from the surface, not through")),
-    ("cylinder-axial-inside", _("in a cylinder, inside, along its axis, not through")),
-    ("bar-surface", _("in a round bar, from the surface")),
-    ("tabulated", _("another body, with a table of geometry factors")),
-]
-
 
 class SiteForm(forms.Form):
     name = Text(_("Name of the site"), max_length=120)
@@ -104,7 +94,6 @@ class PictureForm(forms.Form):
 
 class LocationForm(forms.Form):
     name = Text(_("Name of the place"), max_length=120)
-    number = forms.IntegerField(label=_("Its number in walking order"), required=False, min_value=1)
     described = Text(_("How to find it"), lines=2, required=False)
 
 
@@ -117,7 +106,7 @@ class BasisForm(forms.Form):
     """The values themselves stand beside it, each with its own source (values.py)."""
 
     reason = Text(_("Why this revision"), lines=2)
-    kind = Choice(_("Where the crack is and how it lies"), KINDS)
+    kind = forms.CharField(widget=forms.HiddenInput)
     material = Pick(_("Material"), [], help_text=_("as registered at the site"))
 
     def __init__(self, *args: Any, materials: Any, **kwargs: Any) -> None:

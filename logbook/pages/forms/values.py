@@ -146,8 +146,9 @@ class Row:
 class Values:
     """The rows as typed, to be shown again and to be read."""
 
-    def __init__(self, rows: Sequence[Row]) -> None:
+    def __init__(self, rows: Sequence[Row], sourced: bool = True) -> None:
         self.rows = list(rows)
+        self.sourced = sourced
 
     @classmethod
     def of(
@@ -176,7 +177,9 @@ class Values:
                     data.get(f"source-{number}", "").strip(),
                 )
             )
-        return cls(rows)
+        typed = [row for row in rows if row.name or row.value or row.source]
+        numbered = [Row(n, row.name, row.value, row.source) for n, row in enumerate(typed)]
+        return cls([*numbered, *(Row(len(typed) + n, "") for n in range(SPARE))])
 
     def body(self) -> dict[str, Any]:
         """The values as a nested mapping. Raises Refusal where a name cannot be one."""
@@ -212,7 +215,7 @@ class Values:
         for name, sentences in fields.items():
             row = by_name.get(name) or by_name.get(name.split(".", 1)[-1])
             if row is None:
-                left += [f"{name}: {one}" for one in sentences]
+                left += [f"{Row(0, name).label}: {one}" for one in sentences]
             elif not row.said:
                 row.said.extend(sentences)
         return left
