@@ -3,6 +3,7 @@
 from collections.abc import Iterator, Sequence
 
 from assessment.document.case import Case
+from assessment.leak import Leak
 from assessment.validity import Mark
 
 ALWAYS = (
@@ -22,9 +23,13 @@ ALWAYS = (
 )
 
 
-def cautions(case: Case, marks: Sequence[Mark], became_through: bool) -> tuple[str, ...]:
+def cautions(
+    case: Case, marks: Sequence[Mark], became_through: bool, leak: Leak | None
+) -> tuple[str, ...]:
     """All cautions, the usual ones first."""
-    return tuple(dict.fromkeys((*ALWAYS, *_of_case(case, became_through), *_of_marks(marks))))
+    leaking = () if leak is None else (leak.words,)
+    of_case = _of_case(case, became_through)
+    return tuple(dict.fromkeys((*ALWAYS, *of_case, *leaking, *_of_marks(marks))))
 
 
 def _of_case(case: Case, became_through: bool) -> Iterator[str]:
@@ -48,8 +53,6 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
         yield f"Cycles, as stated: {loading.cycles_said}."
     if loading.temperature is None:
         yield "No metal temperature is given: the toughness is taken to hold at the lowest one."
-    if case.owner.leak_tolerated:
-        yield "Leak before break is not computed yet: break-through ends the life here."
     if case.material.typical:
         yield "Material values are typical ones from a handbook and are not for acceptance."
     if became_through:

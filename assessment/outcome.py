@@ -9,6 +9,8 @@ bounding.kind      the kind it is assessed as; bounding.became_through; bounding
 rules              also "growth measured …" (row 3 of the table), which is not computed yet
 rate               usage per day behind the dates, and how it came about
 restriction        null, or {"factor", "peak": {…}, "words"} where a reduced load restores reserve
+leak               null, or for a pressure boundary whose life ends by break-through: whether it
+                   leaks before it breaks
 stop_size          also new_crack {"depth_mm", "length_mm"} or null, and why_not
 disposition        also conditions, and before_return (repair before return to service)
 figures            what the plots need: diagram (limit curve and points), growth (paths)
@@ -25,6 +27,7 @@ from assessment.engine import ENGINE
 from assessment.estimate import Estimate, Look, arrays, limit_curve, loads_for
 from assessment.failure import OPTION_1, Point
 from assessment.interval import Next, Rule, rate
+from assessment.leak import Leak
 from assessment.lifetime import Critical, LifeFound, growth_now
 from assessment.procedure import Found
 from assessment.stop_size import StopSize
@@ -50,13 +53,14 @@ def outcome_of(case: Case, found: Found) -> dict[str, Any]:
         "next_inspection": _next(found.next),
         "restriction": _restriction(found),
         "stop_size": _stop(found),
+        "leak": _leak(found.leak),
         "disposition": {
             "verdict": found.decision.verdict,
             "reasons": list(found.decision.reasons),
             "conditions": list(found.decision.conditions),
             "before_return": found.decision.before_return,
         },
-        "cautions": list(cautions(case, found.marks, found.bounding.corner.became)),
+        "cautions": list(cautions(case, found.marks, found.bounding.corner.became, found.leak)),
         "working": working(case, found),
         "figures": _figures(found),
     }
@@ -188,6 +192,17 @@ def _restriction(found: Found) -> dict[str, Any] | None:
         "peak": {name: factor * value for name, value in found.bounding_look.peak.items()},
         "reserve_on_load": finite(found.reduced.bounding.reserve),
         "words": found.reduced.words,
+    }
+
+
+def _leak(one: Leak | None) -> dict[str, Any] | None:
+    if one is None:
+        return None
+    return {
+        "leak_before_break": one.holds,
+        "length_mm": mm(one.length),
+        "reserve_on_load": finite(one.reserve),
+        "words": one.words,
     }
 
 

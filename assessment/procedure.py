@@ -22,6 +22,7 @@ from assessment.estimate import (
     toughness_of,
 )
 from assessment.interval import Next, Rule, governing, rules
+from assessment.leak import Leak, leak_before_break
 from assessment.lifetime import Critical, LifeFound, critical, life
 from assessment.needs import needs
 from assessment.restriction import ReducedLoad, reduced_load
@@ -61,6 +62,7 @@ class Found:
     decision: Decision
     stop: StopSizes
     marks: tuple[Mark, ...]
+    leak: Leak | None
 
 
 def assess(document: str | bytes | dict[str, Any]) -> dict[str, Any]:
@@ -135,6 +137,7 @@ def compute(case: Case) -> Found:
         decision=decision,
         stop=stop_sizes(case, look, lacks, bool(decides.outside)),
         marks=(*best.marks, *toughness.marks),
+        leak=leak_before_break(case, look, decides.corner, decides.life),
     )
 
 

@@ -194,10 +194,10 @@ def tray_item_for(person: Person, pk: Any, need: str = "engineer") -> TrayItem:
     return _one(rows, "component__site", person, pk, need, "tray entry")
 
 
-def licence_for(person: Person, pk: Any, day: Any) -> Licence:
-    """A licence of the person's own, in force on the day."""
+def licence_for(person: Person, pk: Any, day: Any, site: Site) -> Licence:
+    """A licence of the person's own that this site has on its books, in force on the day."""
     try:
-        licence = Licence.objects.get(pk=pk, person=person)
+        licence = Licence.objects.get(pk=pk, person=person, site=site)
     except (Licence.DoesNotExist, ValueError, OverflowError):
         raise not_found("licence of yours") from None
     if not licence.in_force(day):

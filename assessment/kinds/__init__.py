@@ -3,6 +3,9 @@
 from .bar_surface import KIND as BAR_SURFACE
 from .base import Body, Kind, Loads, WorkingStep
 from .cylinder_axial_inside import KIND as CYLINDER_AXIAL_INSIDE
+from .cylinder_axial_outside import KIND as CYLINDER_AXIAL_OUTSIDE
+from .cylinder_axial_through import KIND as CYLINDER_AXIAL_THROUGH
+from .cylinder_girth_through import KIND as CYLINDER_GIRTH_THROUGH
 from .hole_through_one import KIND as HOLE_THROUGH_ONE
 from .hole_through_two import KIND as HOLE_THROUGH_TWO
 from .plate_corner import KIND as PLATE_CORNER
@@ -27,6 +30,9 @@ KINDS: dict[str, Kind] = {
         HOLE_THROUGH_ONE,
         HOLE_THROUGH_TWO,
         CYLINDER_AXIAL_INSIDE,
+        CYLINDER_AXIAL_OUTSIDE,
+        CYLINDER_AXIAL_THROUGH,
+        CYLINDER_GIRTH_THROUGH,
         BAR_SURFACE,
         SPECIMEN_COMPACT_TENSION,
         SPECIMEN_EDGE_BEND,

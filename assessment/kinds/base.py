@@ -74,6 +74,8 @@ class Kind:
         a pin load. loads : names of those that are not nil in peak or cycles
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
+    leaks_to : as ``becomes``, for a pressure boundary: what it is once it leaks. It does not go on
+        in service as that; see leak.py
     """
 
     name: str
@@ -95,6 +97,7 @@ class Kind:
     working: Callable[[Floats, Loads, Body], tuple[WorkingStep, ...]]
     becomes: Callable[[Floats, Body], tuple[str, float | None, float, Body] | None]
     placed: Callable[[float | None, float | None, frozenset[str], Body], Body] = _as_it_is
+    leaks_to: Callable[[Floats, Body], tuple[str, float | None, float, Body]] | None = None
     through: bool = False
     optional_body_keys: tuple[str, ...] = ()
     optional_sizes: tuple[str, ...] = ()

@@ -33,12 +33,6 @@ def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
     return parts.marks_of(_checks(x, body))
 
 
-def _hoop(loads: Loads, body: Body) -> float | None:
-    """The nominal stress that the geometry factor is divided by; None without pressure."""
-    hoop = float(parts.load(loads, "pressure")) * body["inner_radius"] / body["thickness"]
-    return float(hoop) if hoop != 0.0 else None
-
-
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
     pressure = float(parts.load(loads, "pressure"))
     numbers = (
@@ -79,7 +73,7 @@ KIND = Kind(
     sizes_of=lambda x, body: (x[0], 2.0 * x[1]),
     stress_intensity=_k,
     reference_stress=_reference,
-    nominal_stress=_hoop,
+    nominal_stress=parts.hoop,
     impossible=two_points.deeper_than_wall,
     wall=lambda x, body: np.stack([body["thickness"] - x[0], np.full_like(x[1], np.inf)]),
     inside=lambda x, body: parts.all_hold(_checks(x, body)),
@@ -87,4 +81,5 @@ KIND = Kind(
     relations=(cylinder_inside.VALIDITY, reference_stress.CYLINDER),
     working=_working,
     becomes=lambda x, body: None,
+    leaks_to=lambda x, body: ("cylinder-axial-through", None, float(2.0 * x[1]), body),
 )

@@ -84,12 +84,17 @@ def _wrong(sentence: str) -> Exception:
     return invalid(sentence, {"photo": [sentence]})
 
 
+def small_enough(size: int | None) -> None:
+    """Before anything of it is read into memory."""
+    if size is None or size > settings.PHOTO_MAX_BYTES:
+        raise _wrong(f"The photo is larger than {settings.PHOTO_MAX_BYTES // 2**20} MB.")
+
+
 def _decode(data: bytes) -> tuple[str, bytes, tuple[int, int]]:
     """Type by decoding, never by name; the copy carries no place and no camera details."""
     # WeasyPrint switches this on for the whole process; half a photo is no photo here.
     ImageFile.LOAD_TRUNCATED_IMAGES = False
-    if len(data) > settings.PHOTO_MAX_BYTES:
-        raise _wrong(f"The photo is larger than {settings.PHOTO_MAX_BYTES // 2**20} MB.")
+    small_enough(len(data))
     try:
         with warnings.catch_warnings():
             warnings.simplefilter("error", Image.DecompressionBombWarning)

@@ -20,7 +20,14 @@ from logbook.actions.password import confirm_password
 from logbook.actions.two_people import must_not_have_logged
 from logbook.errors import conflict, invalid, not_permitted
 from logbook.journal import append
-from logbook.models import Component, Deferral, DeferralRequest, Disposition, Person
+from logbook.models import (
+    AssessmentAsked,
+    Component,
+    Deferral,
+    DeferralRequest,
+    Disposition,
+    Person,
+)
 from logbook.records.issue import issue, reserve_number
 
 ASKED = "ask-deferral"
@@ -74,7 +81,7 @@ def approve_deferral(
     if asked.by_id == by.pk:
         raise not_permitted("You asked for it: someone else has to approve it.")
     must_not_have_logged(by, d.assessment)
-    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone))
+    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone), site)
     confirm_password(by, password, request)
     act = uuid.uuid4()
     with transaction.atomic():
@@ -118,7 +125,8 @@ def _check(d: Disposition, new_on: datetime.date, new_at: Decimal | None) -> Non
     if standing.latest_disposition(d.location, d.crack) != d:
         raise conflict("newer", "A newer signed verdict exists. Open it again.")
     newest = standing.latest_assessment(d.location, d.crack)
-    if newest is None or newest.leaf.index > d.leaf.index:
+    owed = AssessmentAsked.objects.filter(location=d.location, crack=d.crack).exists()
+    if newest is None or owed or newest.leaf.index > d.leaf.index:
         raise conflict("newer", "A newer proposal exists. Decide on that first.")
     if d.until_on is None or new_on <= d.until_on:
         raise invalid("This is no later date.", {"new_on": ["Choose a day after the one set."]})

@@ -149,7 +149,7 @@ def _limit(outcome: dict[str, Any]) -> str:
     restriction = outcome.get("restriction")
     if not restriction:
         return ""
-    # The same number as in standing.load_factor, which tells a lower limit from a higher.
+    # The same number as in binding.load_factor, which tells a lower limit from a higher.
     percent = math.floor(restriction["factor"] * 100)
     return f"{percent} % of the largest load"
 

@@ -16,6 +16,8 @@ from logbook.journal import append
 from logbook.models import Component, Crack, Location, Person, Repair
 
 KIND = "record-repair"
+# A repair may be written down late, not years late.
+LONGEST_LATE = datetime.timedelta(days=366)
 
 
 def record_repair(
@@ -134,6 +136,12 @@ def _check(
         wrong["counter"] = [
             f"The counter stood at {last.normalize():f} at the last look; it cannot run back."
         ]
+    if done_on < _last_day(location.component) - LONGEST_LATE:
+        wrong["done_on"] = ["This day lies long before the last look. Check the year."]
+    if sort != Repair.Sort.REPAIR and not closes:
+        wrong["closes"] = ["What is exchanged or taken out goes on with no crack: say yes."]
+    if sort == Repair.Sort.REPAIR and crack is None and _open_cracks(location):
+        wrong["crack"] = ["There are open cracks here: write the repair down at the crack's page."]
     if sort not in Repair.Sort.values:
         wrong["sort"] = ["Say whether it was repaired, exchanged or removed."]
     if crack is not None and crack.location_id != location.pk:
@@ -158,4 +166,8 @@ def _check(
 def _last_day(component: Component) -> datetime.date:
     """The day of the newest look; the beginning of time where nobody has looked."""
     found = component.inspections.order_by("-found_on").values_list("found_on", flat=True).first()
-    return found or datetime.date.min
+    return found or datetime.date.min + LONGEST_LATE
+
+
+def _open_cracks(location: Location) -> bool:
+    return location.cracks.filter(closed_at__isnull=True).exists()

@@ -48,7 +48,7 @@ def register_licence(
     try:
         with transaction.atomic():
             licence = Licence.objects.create(
-                person=person, valid_from=valid_from, valid_to=valid_to, **read
+                person=person, site=site, valid_from=valid_from, valid_to=valid_to, **read
             )
             append(
                 REGISTERED,
@@ -74,8 +74,8 @@ def register_licence(
 def revoke_licence(by: Person, site: Site, licence_pk: Any, why: str) -> Licence:
     """From now on nothing is signed under it; earlier signatures stand."""
     access.require(by, site, "administer")
-    licence = Licence.objects.filter(pk=licence_pk, revoked_at__isnull=True).first()
-    if licence is None or not access.roles_at(licence.person, site):
+    licence = Licence.objects.filter(pk=licence_pk, site=site, revoked_at__isnull=True).first()
+    if licence is None:
         raise not_found("licence")
     said = needed({"why": why}, {"why": "Say why it is revoked."})
     act = uuid.uuid4()

@@ -4,6 +4,7 @@ import uuid
 from typing import Any
 
 from django.db import transaction
+from django.db.models import Q
 from django.http import HttpRequest
 
 from logbook import access, clock
@@ -13,7 +14,7 @@ from logbook.actions.password import confirm_password
 from logbook.cases.text import digest as text_digest
 from logbook.errors import conflict, not_permitted
 from logbook.journal import append, canonical
-from logbook.models import Component, Crack, Person, Repair, ReturnToService
+from logbook.models import Component, Crack, Person, Repair, ReturnToService, What
 
 KIND = "return-to-service"
 
@@ -61,13 +62,14 @@ def return_to_service(
     said = needed({"grounds": grounds}, {"grounds": "State your grounds."})
     if repair.author_id == by.pk:
         raise not_permitted("You recorded the repair: someone else has to return the part.")
-    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone))
+    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone), site)
     confirm_password(by, password, request)
     act = uuid.uuid4()
     with transaction.atomic():
         Component.objects.select_for_update().get(pk=repair.location.component_id)
         if hasattr(repair, "return_to_service"):
             raise conflict("returned", "This was signed already.")
+        _must_be_newest(repair)
         if digest != shown_digest(repair):
             raise conflict(
                 "not-what-was-shown", "What you saw is not what the book says now. Open it again."
@@ -102,6 +104,23 @@ def return_to_service(
             # The place stands for itself again, and nothing from before the work counts.
             ask.for_assessment(repair.location, None, act)
     return made
+
+
+def _must_be_newest(repair: Repair) -> None:
+    """Refuse where a crack was seen here after the work was written down, or other work was."""
+    later = repair.location.findings.filter(
+        what=What.CRACK, leaf__index__gt=repair.leaf.index, strike_out__isnull=True
+    )
+    works = repair.location.repairs.filter(leaf__index__gt=repair.leaf.index)
+    if repair.sort == Repair.Sort.REPAIR and repair.crack is not None:
+        later = later.filter(crack=repair.crack)
+        works = works.filter(Q(crack=repair.crack) | ~Q(sort=Repair.Sort.REPAIR))
+    if later.exists() or works.exists():
+        raise conflict(
+            "newer",
+            "The book has a crack seen here, or other work, since this was written down: it does "
+            "not return the part. Write down what was done about that.",
+        )
 
 
 def _close(repair: Repair) -> list[Crack | None]:

@@ -117,6 +117,13 @@ def _overridden(
         wrong["until_on"] = ["Say until which day. A part in use is looked at again."]
     if until_on is not None and until_on < clock.today(a.location.component.site.time_zone):
         wrong["until_on"] = ["This day has passed."]
+    rule_on, rule_at = _rule_one(a)
+    if stays and rule_on is not None and until_on is not None and until_on > rule_on:
+        wrong["until_on"] = [f"The crack's life allows {rule_on:%-d %b %Y} at the latest."]
+    if stays and until_at is None:
+        until_at = a.until_at  # a counter that is left out is not thereby lifted
+    if stays and rule_at is not None and until_at is not None and until_at > rule_at:
+        wrong["until_at"] = [f"The crack's life allows {rule_at:f} at the latest."]
     longest = _longest(a)
     if until_on is not None and longest is not None and until_on > longest:
         wrong["until_on"] = [
@@ -134,6 +141,18 @@ def _overridden(
         "until_at": until_at,
         "limit": limit.strip(),
     }
+
+
+def _rule_one(a: Assessment) -> tuple[datetime.date | None, Decimal | None]:
+    """Day and counter of the bounding life cut by its factor; None where it gives none."""
+    if a.outcome_text is None:
+        return None, None
+    rules = text.read(a.outcome_text).get("rules") or [{}]
+    on, at = rules[0].get("on"), rules[0].get("usage")
+    return (
+        None if on is None else datetime.date.fromisoformat(on),
+        None if at is None else Decimal(at),
+    )
 
 
 def _longest(a: Assessment) -> datetime.date | None:

@@ -24,6 +24,7 @@ EASIER_WHEN_SMALLER = (
     "life_factor",
     "size_confidence_sd",
     "shortest_interval_days",
+    "surprise",
 )
 EASIER_WHEN_LARGER = ("longest_interval_days", "failure_probability")
 
@@ -126,6 +127,9 @@ def eased_criteria(location: Location, basis: Basis) -> list[str]:
     for name in ("allows_restriction", "leak_tolerated"):
         if new.get("owner", {}).get(name) and not old.get("owner", {}).get(name):
             eased.append(name)
+    fixed, kept = (one.get("owner", {}).get("fixed_date") for one in (old, new))
+    if fixed and (not kept or str(kept.get("on")) > str(fixed.get("on"))):
+        eased.append("fixed_date")
     return eased
 
 

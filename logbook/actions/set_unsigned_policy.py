@@ -28,7 +28,7 @@ def set_unsigned_policy(
 ) -> UnsignedPolicy:
     access.require(by, site, "sign")
     said = needed({"grounds": grounds}, {"grounds": "Say on what grounds."})
-    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone))
+    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone), site)
     confirm_password(by, password, request)
     act = uuid.uuid4()
     with transaction.atomic():

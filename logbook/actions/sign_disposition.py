@@ -16,7 +16,7 @@ from logbook.actions import standing
 from logbook.actions.password import confirm_password
 from logbook.actions.review import must_be_newest
 from logbook.actions.shown import shown_digest
-from logbook.actions.two_people import eases, must_not_have_logged, standing_before
+from logbook.actions.two_people import must_not_have_logged, review_eases, standing_before
 from logbook.errors import Refusal, conflict, invalid, not_permitted
 from logbook.journal import append
 from logbook.models import Component, Disposition, Licence, Person, Review
@@ -63,12 +63,12 @@ def _check(
     site = review.assessment.location.component.site
     if "administrator" in access.roles_at(by, site):
         raise not_permitted("An administrator of a site does not sign there.")
-    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone))
+    licence = access.licence_for(by, licence_pk, clock.today(site.time_zone), site)
     if meaning not in Disposition.Meaning.values:
         raise invalid("Say what your signature means.", {"meaning": ["Choose one."]})
     must_not_have_logged(by, review.assessment)
     before = standing_before(review.assessment)
-    if eases(review.verdict, before):
+    if review_eases(review, before):
         if review.by_id == by.pk:
             raise not_permitted(
                 f"Leaving “{before}” needs two people: you reviewed it, so another signs."
@@ -84,6 +84,10 @@ def _sign(by: Person, review: Review, licence: Licence, meaning: str, digest: st
     act = uuid.uuid4()
     with transaction.atomic():
         Component.objects.select_for_update().get(pk=a.location.component_id)
+        # Role and licence once more, since the password took its time.
+        site = a.location.component.site
+        access.require(by, site, "sign")
+        access.licence_for(by, licence.pk, clock.today(site.time_zone), site)
         must_be_newest(a)
         if a.reviews.order_by("-leaf__index").first() != review:
             raise conflict("newer", "A newer review of this proposal exists. Read that one.")

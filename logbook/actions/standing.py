@@ -7,19 +7,21 @@ How it comes about (decisions in words, strictest first):
 2. Nothing is signed: the newest proposal. Restrict, repair, refer and withdraw bind at once;
    continue and watch only where the owner has allowed, by signature, to act on an unsigned one.
 3. Signed, and nothing newer: what was signed, until its date or usage, or the deferral's.
-4. Signed, and a newer proposal that is stricter or earlier: the stricter verdict and the earlier
-   date bind at once, shown as proposed. An easier or later one changes nothing until signed.
+4. Signed, and proposals since: the strictest of all, the lowest limit and the earliest date bind
+   at once, shown as proposed (binding.py). An easier or later one changes nothing until signed.
 
 The row does not know what day it is: ``reading`` judges lapse against today and the counter.
 """
 
 import datetime
-import json
-from dataclasses import dataclass
+from collections.abc import Callable
+from dataclasses import dataclass, replace
 from decimal import Decimal
-from typing import Any
+
+from django.db.models import Q
 
 from logbook import clock
+from logbook.actions.binding import Binding, Claim, claim_of, fold, load_factor
 from logbook.cases import rows as rows_of_case
 from logbook.models import (
     Assessment,
@@ -36,7 +38,6 @@ from logbook.models import (
 )
 
 State = Standing.State
-BINDS_UNSIGNED = frozenset({Verdict.RESTRICT, Verdict.REPAIR, Verdict.REFER, Verdict.WITHDRAW})
 
 
 @dataclass(frozen=True)
@@ -58,6 +59,9 @@ def refresh(location: Location, crack: Crack | None) -> Standing | None:
     None where nothing stands any more: a closed crack that was returned to service, a place that
     nobody has looked at, or one whose open cracks stand for it.
     """
+    if crack is not None:
+        # A computation may have run while the crack was closed.
+        crack = Crack.objects.get(pk=crack.pk)
     rows = Standing.objects.filter(location=location, crack=crack)
     what = _what(location, crack)
     if what is None:
@@ -134,12 +138,16 @@ def last_counter(component: Component) -> Decimal | None:
 
 
 def _open_repair(location: Location, crack: Crack | None) -> Repair | None:
-    """A repair whose return to service nobody has signed."""
-    return (
-        Repair.objects.filter(location=location, crack=crack, return_to_service__isnull=True)
+    """The newest work here whose return to service nobody has signed. An exchange or removal is
+    work on every crack of its place."""
+    whole = Q(sort__in=[Repair.Sort.EXCHANGE, Repair.Sort.REMOVAL])
+    newest = (
+        Repair.objects.filter(Q(crack=crack) | whole, location=location)
+        .select_related("leaf", "return_to_service")
         .order_by("-leaf__index")
         .first()
     )
+    return None if newest is None or hasattr(newest, "return_to_service") else newest
 
 
 def _what(location: Location, crack: Crack | None) -> _What | None:
@@ -147,10 +155,11 @@ def _what(location: Location, crack: Crack | None) -> _What | None:
         return None
     if crack is None and location.cracks.filter(closed_at__isnull=True).exists():
         return None  # the open cracks stand for their place
-    asked = AssessmentAsked.objects.filter(location=location, crack=crack).exists()
+    if crack is None and _taken_out(location):
+        return None
     assessment = latest_assessment(location, crack)
     disposition = latest_disposition(location, crack)
-    if asked:
+    if AssessmentAsked.objects.filter(location=location, crack=crack).exists():
         return _What(
             State.NOT_ASSESSED,
             Verdict.WITHDRAW,
@@ -158,128 +167,83 @@ def _what(location: Location, crack: Crack | None) -> _What | None:
             assessment=assessment,
             disposition=disposition,
         )
-    if crack is None:
-        work = rows_of_case.newest_work(location)
-        if work is not None and work.sort == Repair.Sort.REMOVAL and not _looked_since(work):
-            return None  # the part is gone
-        if work is not None and disposition and disposition.leaf.index < work.leaf.index:
-            # What was signed before the work says nothing of the part as it is now.
-            disposition = None
-    if assessment is None:
+    binds = what_binds(location, crack)
+    if assessment is None or binds is None:
         return None
-    what = (
-        _unsigned(assessment, location.component.site)
-        if disposition is None
-        else _signed(assessment, disposition)
-    )
+    what = _written(binds, assessment, location.component.site_id)
     if _open_repair(location, crack) is not None:
-        return _What(**{**what.__dict__, "held": True})
+        return replace(what, held=True)
     return what
 
 
-def _looked_since(work: Repair) -> bool:
-    return work.location.findings.filter(
-        leaf__index__gt=work.leaf.index, strike_out__isnull=True
-    ).exists()
+def _taken_out(location: Location) -> bool:
+    """The part is gone, and nobody has looked at another in its place."""
+    work = rows_of_case.newest_work(location)
+    if work is None or work.sort != Repair.Sort.REMOVAL:
+        return False
+    return not rows_of_case.looked_since(work)
 
 
-def _unsigned(a: Assessment, site: Site) -> _What:
-    binds = a.verdict in BINDS_UNSIGNED
-    allowed = site.unsigned_may_be_acted_on is True
-    return _What(
-        State.BINDING if binds else State.PROPOSED,
-        a.verdict,
-        held_by_verdict(a.verdict, a.until_on, a.until_at, confirmed=False)
-        if binds
-        else not allowed,
-        a.until_on,
-        a.until_at,
-        a.limit,
-        assessment=a,
+def what_binds(location: Location, crack: Crack | None) -> Binding | None:
+    """The signature and all proposals since, folded; None where there is neither."""
+    disposition = latest_disposition(location, crack)
+    work = rows_of_case.newest_work(location) if crack is None else None
+    # What was signed or proposed before the work says nothing of the part as it is now.
+    start = -1 if work is None else work.leaf.index
+    if disposition is not None and disposition.leaf.index < start:
+        disposition = None
+    if disposition is not None:
+        start = disposition.leaf.index
+    since = (
+        Assessment.objects.filter(location=location, crack=crack, leaf__index__gt=start)
+        .select_related("leaf")
+        .order_by("leaf__index")
+    )
+    replaced = rows_of_case.counter_replaced(location.component)
+
+    def counts(index: int) -> bool:
+        return replaced is None or index >= replaced.leaf.index
+
+    claims = [claim_of(one, counter_counts=counts(one.leaf.index)) for one in since]
+    return fold(None if disposition is None else _signed(disposition, counts), claims)
+
+
+def _signed(d: Disposition, counts: Callable[[int], bool]) -> Claim:
+    """A signature as a claim: until its date and counter, or those of its deferral."""
+    deferral = d.deferrals.select_related("leaf").order_by("-leaf__index").first()
+    until_on = deferral.new_on if deferral is not None else d.until_on
+    until_at = deferral.new_at if deferral is not None and deferral.new_at else d.until_at
+    own_words = d.limit != d.assessment.limit
+    return Claim(
+        d.verdict,
+        until_on,
+        until_at if counts(d.leaf.index) else None,
+        d.limit,
+        None if own_words else load_factor(d.assessment),
+        d.assessment,
+        d,
+        confirmed=hasattr(d, "restriction_confirmed"),
     )
 
 
-def _signed(a: Assessment, d: Disposition) -> _What:
-    deferral = d.deferrals.order_by("-leaf__index").first()
-    due_on = deferral.new_on if deferral is not None else d.until_on
-    due_at = deferral.new_at if deferral is not None and deferral.new_at else d.until_at
-    until_at = d.until_at
-    if rows_of_case.on_an_older_counter(d.location.component, d.leaf.index):
-        # A reading of the counter that was taken out says nothing on the new one: the newer
-        # proposal's reading binds, or without one its verdict.
-        due_at = until_at = None
-    confirmed = hasattr(d, "restriction_confirmed")
-    newer = a.leaf.index > d.leaf.index
-    stricter = newer and (strictness(a.verdict) > strictness(d.verdict) or _lower_limit(a, d))
-    earlier = newer and (_before(a.until_on, d.until_on) or _before(a.until_at, until_at))
-    if not (stricter or earlier):
-        return _What(
-            State.IN_FORCE,
-            d.verdict,
-            held_by_verdict(d.verdict, due_on, due_at, confirmed),
-            due_on,
-            due_at,
-            d.limit,
-            assessment=a,
-            disposition=d,
-        )
-    verdict = a.verdict if stricter else d.verdict
+def _written(binds: Binding, newest: Assessment, site_pk: int) -> _What:
+    claim = binds.claim
+    if binds.proposed:
+        # Read anew: the policy may have changed while something was computed.
+        allowed = Site.objects.get(pk=site_pk).unsigned_may_be_acted_on is True
+        state, held = State.PROPOSED, not allowed
+    else:
+        state, held = State.IN_FORCE if binds.signed else State.BINDING, claim.held
     return _What(
-        State.BINDING,
-        verdict,
-        held_by_verdict(verdict, a.until_on, a.until_at, confirmed and not stricter),
-        _earlier(a.until_on, due_on),
-        _earlier(a.until_at, due_at),
-        a.limit if stricter else d.limit,
-        assessment=a,
-        disposition=d,
+        state,
+        claim.verdict,
+        held,
+        binds.due_on,
+        binds.due_at,
+        claim.limit,
+        assessment=newest,
+        disposition=claim.disposition or latest_disposition(newest.location, newest.crack),
     )
-
-
-def _lower_limit(a: Assessment, d: Disposition) -> bool:
-    """A newer restriction to less load than the signed one. A limit that an engineer wrote in
-    words of their own is not known as a number, so that any newer one counts as lower."""
-    if a.verdict != Verdict.RESTRICT or d.verdict != Verdict.RESTRICT or a.limit == d.limit:
-        return False
-    new, old = load_factor(a), load_factor(d.assessment)
-    return new is None or old is None or d.limit != d.assessment.limit or new < old
-
-
-def load_factor(a: Assessment) -> float | None:
-    """The part of the largest load that a restriction leaves; None where the outcome has none."""
-    if a.outcome_text is None:
-        return None
-    restriction = json.loads(a.outcome_text).get("restriction")
-    return None if restriction is None else float(restriction["factor"])
-
-
-def held_by_verdict(
-    verdict: str,
-    until_on: datetime.date | None,
-    until_at: Decimal | None,
-    confirmed: bool,
-) -> bool:
-    """Must the part stand still? A repair with a date may wait until then; a restriction counts
-    once its limiter or tag is confirmed."""
-    if verdict in (Verdict.REFER, Verdict.WITHDRAW):
-        return True
-    if verdict == Verdict.REPAIR:
-        return until_on is None and until_at is None
-    if verdict == Verdict.RESTRICT:
-        return not confirmed
-    return False
-
-
-def _before(new: Any, old: Any) -> bool:
-    """Earlier than what is in force; a limit where there was none is earlier too."""
-    if new is None:
-        return False
-    return bool(old is None or new < old)
-
-
-def _earlier(a: Any, b: Any) -> Any:
-    given = [x for x in (a, b) if x is not None]
-    return min(given) if given else None
 
 
 @dataclass(frozen=True)

@@ -62,6 +62,8 @@ class StandingShape(serializers.ModelSerializer[Standing]):
     component = serializers.CharField(source="location.component.tag")
     place = serializers.CharField(source="location.name")
     crack_number = serializers.IntegerField(source="crack.number", allow_null=True)
+    verdict = serializers.SerializerMethodField()
+    held = serializers.SerializerMethodField()
     today = serializers.SerializerMethodField()
 
     class Meta:
@@ -69,9 +71,19 @@ class StandingShape(serializers.ModelSerializer[Standing]):
         fields = ("location", "crack", "component", "place", "crack_number", "state", "verdict",
                   "held", "due_on", "due_at", "counter", "limit", "since", "today")  # fmt: skip
 
+    def _read(self, row: Standing) -> standing.Reading:
+        return standing.reading(row, clock.today(row.location.component.site.time_zone))
+
+    def get_verdict(self, row: Standing) -> str:
+        """As it reads today: past its date it has lapsed."""
+        return str(self._read(row).verdict)
+
+    def get_held(self, row: Standing) -> bool:
+        return self._read(row).held
+
     @extend_schema_field(OpenApiTypes.OBJECT)
     def get_today(self, row: Standing) -> dict[str, Any]:
-        read = standing.reading(row, clock.today(row.location.component.site.time_zone))
+        read = self._read(row)
         return {
             "verdict": str(read.verdict),
             "held": read.held,

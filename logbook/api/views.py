@@ -165,7 +165,13 @@ class Inspections(generics.ListAPIView[Inspection]):
             )
             return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
         before = Inspection.objects.filter(key=draft.key).exists()
-        inspection = log_inspection(_who(request), draft)
+        try:
+            inspection = log_inspection(_who(request), draft)
+        except Refusal as refusal:
+            if refusal.code != "crack-closed" or request.query_params.get("keep") != "tray":
+                raise
+            item = keep_in_tray(_who(request), component, str(draft.key), dict(data), refusal)
+            return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
         answer_now(inspection.leaf_id)
         return _answer(inspection, 200 if before else 201)
 
@@ -193,7 +199,7 @@ def _written_before(person: Any, data: Mapping[str, Any]) -> Inspection | None:
 
 def _answer(inspection: Inspection, status: int) -> Response:
     owed = AssessmentAsked.objects.filter(because_act=inspection.leaf_id).exists()
-    proposals = Assessment.objects.filter(because_act=inspection.leaf_id).order_by("pk")
+    proposals = _proposals_since(inspection)
     fresh = (
         Inspection.objects.select_related("leaf")
         .prefetch_related("findings__photos", "findings__crack")
@@ -206,6 +212,23 @@ def _answer(inspection: Inspection, status: int) -> Response:
         "proposals": proposals,
     }
     return Response(shapes.InspectionAnswer(made).data, status=status)
+
+
+def _proposals_since(inspection: Inspection) -> list[Assessment]:
+    """The newest proposal for each place or crack of the entry: one computation may have answered
+    several entries."""
+    found = []
+    pairs = inspection.findings.values_list("location", "crack").distinct()
+    for location, crack in pairs:
+        newest = (
+            Assessment.objects.filter(
+                location=location, crack=crack, leaf__index__gt=inspection.leaf.index
+            )
+            .order_by("-leaf__index")
+            .first()
+        )
+        found += [] if newest is None else [newest]
+    return sorted(found, key=lambda one: one.pk)
 
 
 class OneInspection(APIView):

@@ -49,7 +49,7 @@ def freeze(location: Location, crack: Crack | None) -> FrozenCase:
     body = text.read(basis.body)
     look = rows.last_look(location, crack)
     work = rows.newest_work(location) if crack is None else None
-    if work is not None and (look is None or look.leaf.index < work.leaf.index):
+    if work is not None and not rows.looked_since(work):
         return _none(
             basis,
             f"{work.get_sort_display().capitalize()} on {_day(work.done_on)}, and no look at this "
@@ -187,11 +187,35 @@ def _found(body: dict[str, Any], crack: Crack, look: Finding) -> dict[str, Any]:
             "crack": _new_start(body, crack, start),
             "seen": _Seen(start.done_on, start.counter, start.leaf.index),
         }
-    last = sizes[-1]
+    day = sizes[-1].finding.inspection.found_on
+    of_day = [one for one in sizes if one.finding.inspection.found_on == day]
     return {
-        "crack": _crack(body, last),
-        "history": _history(body, crack, sizes[:-1]),
+        "crack": _crack(body, _largest(of_day)),
+        "history": _history(body, crack, [one for one in sizes if one not in of_day]),
     }
+
+
+def _largest(of_day: list[Measurement]) -> Measurement:
+    """Of several sizes of one day the larger counts until a person has decided: the largest depth
+    with the largest length, and an unknown depth before any that is known."""
+    last = of_day[-1]
+    if len(of_day) == 1:
+        return last
+    unknown = [one for one in of_day if one.depth_basis == DepthBasis.NOT_MEASURED]
+    at_least = [one for one in of_day if one.depth_basis == DepthBasis.AT_LEAST]
+    depths = [one.depth_mm for one in of_day if one.depth_mm is not None]
+    lengths = [one.length_mm for one in of_day if one.length_mm is not None]
+    basis = last.depth_basis
+    if unknown or at_least:
+        basis = DepthBasis.NOT_MEASURED if unknown else DepthBasis.AT_LEAST
+    return Measurement(
+        crack=last.crack,
+        finding=last.finding,
+        depth_basis=basis,
+        depth_mm=None if unknown else max(depths, default=None),
+        length_mm=max(lengths, default=None),
+        why_smaller=last.why_smaller,
+    )
 
 
 def _new_start(body: dict[str, Any], crack: Crack, start: Repair) -> dict[str, Any]:

@@ -39,6 +39,15 @@ def newest_work(location: Location) -> Repair | None:
     )
 
 
+def looked_since(work: Repair) -> bool:
+    """Somebody looked at the place after the work, by the day and by the book."""
+    return work.location.findings.filter(
+        leaf__index__gt=work.leaf.index,
+        inspection__found_on__gte=work.done_on,
+        strike_out__isnull=True,
+    ).exists()
+
+
 def measurements(crack: Crack) -> list[Measurement]:
     """The sizes that count, oldest first: not struck out, and since the newest start.
 

@@ -10,6 +10,10 @@ class Licence(models.Model):
     person = models.ForeignKey(
         settings.AUTH_USER_MODEL, on_delete=models.PROTECT, related_name="licences"
     )
+    # A site vouches for the papers of its own people; another site's word does not count here.
+    site = models.ForeignKey(
+        "logbook.Site", null=True, on_delete=models.PROTECT, related_name="licences"
+    )
     body = models.CharField(max_length=160, help_text="who granted it")
     number = models.CharField(max_length=60)
     discipline = models.CharField(max_length=120)
@@ -21,7 +25,7 @@ class Licence(models.Model):
     class Meta:
         constraints = [
             models.UniqueConstraint(
-                fields=["body", "number", "valid_from"], name="licence_number_once"
+                fields=["site", "body", "number", "valid_from"], name="licence_number_once"
             ),
             models.CheckConstraint(
                 condition=models.Q(valid_to__gte=models.F("valid_from")),

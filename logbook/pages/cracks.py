@@ -47,7 +47,7 @@ def crack(request: Asked, pk: int) -> HttpResponse:
             "proposal": proposal,
             "signed": signed,
             "figures": figures(one, proposal, signed, sign, line),
-            "shown": _shown(line, proposal),
+            "shown": _shown(one, proposal),
             "working": working(proposal),
             "to_measure": to_measure(proposal),
             "repairs": Repair.objects.filter(crack=one).select_related("leaf"),
@@ -76,11 +76,10 @@ def figures(
     return figures_of(one, proposal, disposition=binding, binds=binds, decimal_sign=decimal_sign)
 
 
-def _shown(line: Line | None, proposal: Assessment | None) -> Assessment | None:
+def _shown(one: Crack, proposal: Assessment | None) -> Assessment | None:
     """Whose reasons stand beside the verdict: those of what binds."""
-    if line is None or not line.reading.signed or line.standing.disposition is None:
-        return proposal
-    return line.standing.disposition.assessment
+    binds = standings.what_binds(one.location, one)
+    return proposal if binds is None else binds.claim.assessment
 
 
 def outcome_of(proposal: Assessment | None) -> dict[str, Any]:

@@ -18,7 +18,7 @@ from logbook.actions.review import review as review_proposal
 from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
 from logbook.errors import Refusal
-from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Review, Verdict
+from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Review, Site, Verdict
 
 from .asked import Asked, may
 from .cracks import figures, working
@@ -105,10 +105,10 @@ def _review(request: Asked, assessment: Assessment, typed: dict[str, Any]) -> Re
     )
 
 
-def licences_of(request: Asked, time_zone: str) -> list[Licence]:
-    """Those in force today; an expired one cannot be chosen."""
-    today = clock.today(time_zone)
-    mine = Licence.objects.filter(person=request.user).order_by("valid_to")
+def licences_of(request: Asked, site: Site) -> list[Licence]:
+    """Those in force today on the books of the site; an expired one cannot be chosen."""
+    today = clock.today(site.time_zone)
+    mine = Licence.objects.filter(person=request.user, site=site).order_by("valid_to")
     return [one for one in mine if one.in_force(today)]
 
 
@@ -121,7 +121,7 @@ def sign(request: Asked, pk: int) -> HttpResponse:
     digest = shown_digest(one)
     form = SignForm(
         request.POST or None,
-        licences=licences_of(request, site.time_zone),
+        licences=licences_of(request, site),
         initial={"shown_digest": digest},
     )
     if request.method == "POST" and form.is_valid():
@@ -193,11 +193,16 @@ def signed(request: Asked, pk: int) -> HttpResponse:
     one = access.disposition_for(request.user, pk)
     component = one.location.component
     sign_of = request.user.decimal_sign
+    about = around(request, one.assessment)
+    line = about["line"]
     return render(
         request,
         "logbook/signed.html",
         {
-            **around(request, one.assessment),
+            **about,
+            "in_force": line is not None
+            and line.reading.signed
+            and line.standing.disposition_id == one.pk,
             "signed": one,
             "signed_sentence": _signed_sentence(one, sign_of),
             "signed_until": by_words(one.until_on, one.until_at, component.counter_unit, sign_of),
@@ -263,7 +268,7 @@ def deferral(request: Asked, pk: int) -> HttpResponse:
     asked = access.deferral_request_for(request.user, pk)
     one = asked.disposition
     site = one.location.component.site
-    form = ApproveForm(request.POST or None, licences=licences_of(request, site.time_zone))
+    form = ApproveForm(request.POST or None, licences=licences_of(request, site))
     if request.method == "POST" and form.is_valid():
         done = attempt(form, _approve, request, asked.pk, form.cleaned_data)
         if done is not None:

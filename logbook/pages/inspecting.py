@@ -13,7 +13,7 @@ from django.shortcuts import redirect, render
 from django.utils.translation import gettext as _
 
 from logbook import access
-from logbook.actions.add_photo import add_photo
+from logbook.actions.add_photo import add_photo, small_enough
 from logbook.actions.answer import answer_now
 from logbook.actions.known import known_of
 from logbook.actions.log_inspection import log_inspection
@@ -157,6 +157,7 @@ def _arrive(request: Asked, photo: Photo, file: File[bytes]) -> None:
     from django.contrib import messages
 
     try:
+        small_enough(file.size)
         file.seek(0)
         add_photo(request.user, photo.pk, file.read())
     except Refusal as refusal:

@@ -104,7 +104,7 @@ def repair(request: Asked, pk: int) -> HttpResponse:
     site = one.location.component.site
     form = ReturnForm(
         request.POST or None,
-        licences=licences_of(request, site.time_zone),
+        licences=licences_of(request, site),
         initial={"shown_digest": shown_digest(one)},
     )
     if request.method == "POST" and form.is_valid():

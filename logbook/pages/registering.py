@@ -64,9 +64,8 @@ def site(request: Asked, slug: str) -> HttpResponse:
     """The site's own page: who may do what, whom to call, what is registered."""
     one = access.site_for(request.user, slug)
     members = one.memberships.filter(ended_at__isnull=True).select_related("person")
-    people = {member.person_id for member in members}
     today = clock.today(one.time_zone)
-    licences = Licence.objects.filter(person__in=people).select_related("person")
+    licences = Licence.objects.filter(site=one).select_related("person")
     return render(
         request,
         "logbook/site.html",
@@ -107,7 +106,7 @@ def new_site(request: Asked) -> HttpResponse:
 def policy(request: Asked, slug: str) -> HttpResponse:
     """The owner's word on unsigned verdicts, by signature; there is no default."""
     one = access.site_for(request.user, slug, "sign")
-    form = PolicyForm(request.POST or None, licences=licences_of(request, one.time_zone))
+    form = PolicyForm(request.POST or None, licences=licences_of(request, one))
     if request.method == "POST" and form.is_valid():
         typed = form.cleaned_data
         done = attempt(

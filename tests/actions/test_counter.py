@@ -53,7 +53,8 @@ def test_a_place_last_looked_at_on_the_old_counter_is_referred(deciding: Decidin
 
 def test_a_visit_struck_out_whole_takes_its_reading_back(deciding: Deciding) -> None:
     crack = deciding.found(counter=1000)
-    deciding.found("3.1", "12.4", str(crack.number), counter=900_000)
+    leap = {"confirm_counter": "yes"}
+    deciding.found("3.1", "12.4", str(crack.number), counter=900_000, head=leap)
     assert standing.last_counter(deciding.book.gate) == 900_000
     wrong = Finding.objects.order_by("-pk")[0]
     strike_out(deciding.book.people["crew"], wrong.pk, "the counter was misread by a digit")

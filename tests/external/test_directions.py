@@ -62,6 +62,21 @@ CASES = {
         {"width_mm": 100.0, "thickness_mm": 10.0, "hole_diameter_mm": 20.0},
         {"membrane": 40.0, "pin_load": 10.0},
     ),
+    "cylinder-axial-outside": (
+        {"depth_mm": 2.0, "length_mm": 12.0},
+        {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
+        {"pressure": 8.0},
+    ),
+    "cylinder-axial-through": (
+        {"length_mm": 20.0},
+        {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
+        {"pressure": 8.0},
+    ),
+    "cylinder-girth-through": (
+        {"length_mm": 30.0},
+        {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
+        {"membrane": 60.0, "global_bending": 30.0},
+    ),
     "cylinder-axial-inside": (
         {"depth_mm": 2.0, "length_mm": 12.0},
         {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
@@ -81,7 +96,8 @@ STRETCH = (1.1, 1.5)
 WITHOUT_A_BAD_DIRECTION = {
     *((kind, "thickness_mm") for kind in CASES if kind.startswith("plate-through")),
     *((f"hole-through-{n}", "hole_diameter_mm") for n in ("one", "two")),
-    ("cylinder-axial-inside", "inner_radius_mm"),
+    *((kind, "inner_radius_mm") for kind in CASES if kind.startswith("cylinder-axial")),
+    ("cylinder-girth-through", "thickness_mm"),
     ("plate-embedded", "thickness_mm"),
     ("specimen-edge-bend", "span_mm"),
 }

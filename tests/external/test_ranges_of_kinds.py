@@ -32,6 +32,10 @@ def by_radius(value):
     return np.array([0.004, 0.01]), CYLINDER | {"inner_radius": 0.02 / value}
 
 
+def by_mean_radius(value):
+    return np.array([0.01]), CYLINDER | {"inner_radius": 0.02 * value - 0.01}
+
+
 def long_and_shallow(value):
     """a/c = 0.1: the bound on depth is 1.25 (0.1 + 0.6) = 0.875 of the wall."""
     a = 0.02 * value * 1.25 * 0.7
@@ -70,6 +74,16 @@ CRACKS = {
         for symbol, crack in AT_HOLE.items()
     },
     ("hole-through-two", "(D + ΣL)/W"): lambda value: (np.array([0.05 * value - 0.01]), HOLE),
+    ("cylinder-axial-outside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
+    ("cylinder-axial-outside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
+    ("cylinder-axial-outside", "t/R"): by_radius,
+    ("cylinder-axial-through", "c/√(Rt)"): lambda value: (
+        np.array([value * np.sqrt(0.11 * 0.02)]),
+        CYLINDER,
+    ),
+    ("cylinder-axial-through", "R/t"): by_mean_radius,
+    ("cylinder-girth-through", "θ/π"): lambda value: (np.array([value * np.pi * 0.11]), CYLINDER),
+    ("cylinder-girth-through", "R/t"): by_mean_radius,
     ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-inside", "t/R"): by_radius,

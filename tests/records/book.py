@@ -50,6 +50,7 @@ class Book:
         self.signatory = self.person("wojcik", "Á. Wójcik")
         self.licence = Licence.objects.create(
             person=self.signatory,
+            site=self.site,
             body="Board of Lifting Engineers",
             number="4471",
             discipline="cranes",

@@ -101,7 +101,6 @@ class _Loading:
     now: datetime.datetime = field(default_factory=clock.now)
     people: dict[str, Person] = field(default_factory=dict)
     sites: dict[str, Site] = field(default_factory=dict)
-    licence: Licence | None = None
 
     def at(self, days_ago: int, hour: int = 9) -> datetime.datetime:
         day = self.now - datetime.timedelta(days=days_ago)
@@ -154,7 +153,6 @@ class _Loading:
             self.people[person["username"]] = Person.objects.filter(
                 username=person["username"]
             ).first() or self._person(keeper, person)
-        self.licence = Licence.objects.filter(person=self.people["petra"]).first()
         for site in self.scenario["sites"]:
             here = self.sites[site["slug"]]
             if site["unsigned_allowed"] is not None and not here.unsigned_policies.exists():
@@ -164,7 +162,7 @@ class _Loading:
                     allowed=site["unsigned_allowed"],
                     grounds="Owner's standing order 12: a part with no worse than “watch” stays in "
                     "use until it is signed.",
-                    licence_pk=self.licence.pk if self.licence else None,
+                    licence_pk=_licence_at(here),
                     password=self.scenario["password"],
                 )
 
@@ -197,14 +195,15 @@ class _Loading:
             grant_role(keeper, self.sites[slug], made.pk, role)
         if "licence" in person:
             today = clock.now().date()
-            register_licence(
-                keeper,
-                first,
-                made.pk,
-                **person["licence"],
-                valid_from=today.replace(year=today.year - 2, day=1),
-                valid_to=today.replace(year=today.year + 5, day=1),
-            )
+            for slug in dict.fromkeys(slug for slug, _role in person["roles"]):
+                register_licence(
+                    keeper,
+                    self.sites[slug],
+                    made.pk,
+                    **person["licence"],
+                    valid_from=today.replace(year=today.year - 2, day=1),
+                    valid_to=today.replace(year=today.year + 5, day=1),
+                )
         return made
 
     def _materials(self) -> None:
@@ -294,7 +293,7 @@ class _Loading:
         signed = sign_disposition(
             self.people["petra"],
             made.pk,
-            licence_pk=self.licence.pk if self.licence else None,
+            licence_pk=_licence_at(a.location.component.site),
             meaning="approved",
             password=self.scenario["password"],
             digest=shown_digest(made),
@@ -302,6 +301,12 @@ class _Loading:
         if signed.verdict == Verdict.RESTRICT:
             confirm_restriction(self.people["ivo"], signed.pk, "load limiter set; tag 0417 hung")
         return signed
+
+
+def _licence_at(site: Site) -> int | None:
+    """Petra's licence on the books of this site."""
+    found = Licence.objects.filter(person__username="petra", site=site).first()
+    return None if found is None else found.pk
 
 
 def _with_material(site: Site, body: dict[str, Any]) -> dict[str, Any]:
