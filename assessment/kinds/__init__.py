@@ -6,8 +6,12 @@ from .cylinder_axial_inside import KIND as CYLINDER_AXIAL_INSIDE
 from .cylinder_axial_outside import KIND as CYLINDER_AXIAL_OUTSIDE
 from .cylinder_axial_through import KIND as CYLINDER_AXIAL_THROUGH
 from .cylinder_girth_through import KIND as CYLINDER_GIRTH_THROUGH
-from .hole_through_one import KIND as HOLE_THROUGH_ONE
-from .hole_through_two import KIND as HOLE_THROUGH_TWO
+from .hole_corner import ONE as HOLE_CORNER_ONE
+from .hole_corner import TWO as HOLE_CORNER_TWO
+from .hole_through import ONE as HOLE_THROUGH_ONE
+from .hole_through import TWO as HOLE_THROUGH_TWO
+from .lug_corner import KIND as LUG_CORNER
+from .lug_through import KIND as LUG_THROUGH
 from .plate_corner import KIND as PLATE_CORNER
 from .plate_embedded import KIND as PLATE_EMBEDDED
 from .plate_surface import KIND as PLATE_SURFACE
@@ -34,6 +38,10 @@ KINDS: dict[str, Kind] = {
         CYLINDER_AXIAL_THROUGH,
         CYLINDER_GIRTH_THROUGH,
         BAR_SURFACE,
+        HOLE_CORNER_ONE,
+        HOLE_CORNER_TWO,
+        LUG_THROUGH,
+        LUG_CORNER,
         SPECIMEN_COMPACT_TENSION,
         SPECIMEN_EDGE_BEND,
         TABULATED,

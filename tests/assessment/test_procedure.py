@@ -187,6 +187,16 @@ def test_a_bounding_depth_through_the_wall_is_a_through_crack():
     assert outcome["bounding"]["kind"] == "plate-through-centre"
 
 
+HOLE = {"width_mm": 200, "thickness_mm": 10, "hole_diameter_mm": 20}
+CORNER = {"depth_mm": 2, "length_mm": 3}
+LUG = {"width_mm": 100, "thickness_mm": 20, "hole_diameter_mm": 40, "head_mm": 55}
+UNITS = {"pin_load": "kn"}
+
+
+def load_key(name, word=""):
+    return "_".join(part for part in (name, word, UNITS.get(name, "mpa")) if part)
+
+
 KINDS = {
     "plate-through-centre": (
         {"length_mm": 12},
@@ -203,6 +213,12 @@ KINDS = {
         {"inner_radius_mm": 100, "thickness_mm": 12},
         {"pressure": 8},
     ),
+    "hole-through-one": ({"length_mm": 4}, HOLE, {"membrane": 60, "pin_load": 10}),
+    "hole-through-two": ({"length_mm": 4}, HOLE, {"membrane": 60, "pin_load": 10}),
+    "hole-corner-one": (CORNER, HOLE, {"membrane": 60, "pin_load": 10}),
+    "hole-corner-two": (CORNER, HOLE, {"membrane": 60, "pin_load": 10}),
+    "lug-corner": ({"depth_mm": 3, "length_mm": 3}, LUG, {"pin_load": 30}),
+    "lug-through": ({"length_mm": 3}, LUG, {"pin_load": 30}),
     "bar-surface": ({"depth_mm": 3}, {"diameter_mm": 60}, {"membrane": 60, "bending": 60}),
     "tabulated": (
         {"depth_mm": 3},
@@ -215,7 +231,7 @@ KINDS = {
 @pytest.mark.parametrize("kind", KINDS)
 def test_every_kind_goes_the_whole_way(kind):
     sizes, body, loads = KINDS[kind]
-    cycles = {f"{name}_range_mpa": 0.5 * value for name, value in loads.items()}
+    cycles = {load_key(name, "range"): 0.5 * value for name, value in loads.items()}
     case = surface(
         crack={
             "kind": kind,
@@ -223,7 +239,7 @@ def test_every_kind_goes_the_whole_way(kind):
             "sizing": {"method": "ultrasonic", "depth_sd_mm": 0.2, "length_sd_mm": 0.3},
         },
         body=body,
-        loading__peak={f"{name}_mpa": value for name, value in loads.items()},
+        loading__peak={load_key(name): value for name, value in loads.items()},
         loading__cycles=[{**cycles, "stress_ratio": 0.1, "per_usage": 20}],
     )
     outcome = assess(case)

@@ -11,6 +11,10 @@ from assessment import assess
 from assessment.verdict import STRICTNESS
 from tests.assessment.examples import changed, surface
 
+HOLE = {"width_mm": 200.0, "thickness_mm": 10.0, "hole_diameter_mm": 20.0}
+CORNER = {"depth_mm": 2.0, "length_mm": 3.0}
+LUG = {"width_mm": 100.0, "thickness_mm": 20.0, "hole_diameter_mm": 40.0, "head_mm": 55.0}
+
 CASES = {
     "plate-through-centre": (
         {"length_mm": 12.0},
@@ -52,16 +56,6 @@ CASES = {
         {"width_mm": 50.0, "thickness_mm": 25.0, "span_mm": 200.0},
         {"load": 10.0},
     ),
-    "hole-through-one": (
-        {"length_mm": 4.0},
-        {"width_mm": 100.0, "thickness_mm": 10.0, "hole_diameter_mm": 20.0},
-        {"membrane": 40.0, "pin_load": 10.0},
-    ),
-    "hole-through-two": (
-        {"length_mm": 4.0},
-        {"width_mm": 100.0, "thickness_mm": 10.0, "hole_diameter_mm": 20.0},
-        {"membrane": 40.0, "pin_load": 10.0},
-    ),
     "cylinder-axial-outside": (
         {"depth_mm": 2.0, "length_mm": 12.0},
         {"inner_radius_mm": 100.0, "thickness_mm": 12.0},
@@ -83,6 +77,12 @@ CASES = {
         {"pressure": 8.0},
     ),
     "bar-surface": ({"depth_mm": 3.0}, {"diameter_mm": 60.0}, {"membrane": 60.0, "bending": 60.0}),
+    "hole-through-one": ({"length_mm": 4.0}, HOLE, {"membrane": 60.0, "pin_load": 10.0}),
+    "hole-through-two": ({"length_mm": 4.0}, HOLE, {"membrane": 60.0, "pin_load": 10.0}),
+    "hole-corner-one": (CORNER, HOLE, {"membrane": 60.0, "pin_load": 10.0}),
+    "hole-corner-two": (CORNER, HOLE, {"membrane": 60.0, "pin_load": 10.0}),
+    "lug-corner": ({"depth_mm": 3.0, "length_mm": 3.0}, LUG, {"pin_load": 30.0}),
+    "lug-through": ({"length_mm": 3.0}, LUG, {"pin_load": 30.0}),
     "tabulated": (
         {"depth_mm": 3.0},
         {"thickness_mm": 30.0, "table": [[0, 1.1], [20, 1.6]]},
@@ -95,7 +95,7 @@ STRETCH = (1.1, 1.5)
 # longer span bends more.
 WITHOUT_A_BAD_DIRECTION = {
     *((kind, "thickness_mm") for kind in CASES if kind.startswith("plate-through")),
-    *((f"hole-through-{n}", "hole_diameter_mm") for n in ("one", "two")),
+    *((kind, "hole_diameter_mm") for kind in CASES if kind.startswith(("hole", "lug"))),
     *((kind, "inner_radius_mm") for kind in CASES if kind.startswith("cylinder-axial")),
     ("cylinder-girth-through", "thickness_mm"),
     ("plate-embedded", "thickness_mm"),
@@ -133,6 +133,8 @@ def worse(kind):
     down = ["material__bounding__toughness__k_mat_mpa_sqrt_m", "material__yield_mpa"]
     down += ["material__toughness__k_mat_mpa_sqrt_m"]
     # A through crack's stress is given whatever the thickness, which is then no part of it.
+    if kind.startswith(("hole", "lug")):
+        up.append("body__hole_diameter_mm")
     # An inner crack's ligament counts, and the wall only through its limit load.
     down += [
         f"body__{key}"

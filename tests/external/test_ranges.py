@@ -51,6 +51,9 @@ PLATE = {"thickness": 0.02, "width": 0.4}
 CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
 TABLE = {"thickness": 0.07, "table": ((0.001, 1.5), (0.02, 1.2), (0.05, 1.8))}
 EDGE = {"thickness": 0.02, "width": 0.1, "ends": "free"}
+HOLE = {"width": 0.2, "thickness": 0.01, "hole_diameter": 0.04}
+LUG = {"width": 0.1, "thickness": 0.01, "hole_diameter": 0.04, "head": 0.06}
+CORNER = {"width": 0.4, "thickness": 0.02, "hole_diameter": 0.04}
 # A front outside one range of its kind, and the words that must mark it.
 OUTSIDE = [
     ("plate-surface", [0.0105, 0.005], PLATE, "a/c"),
@@ -65,6 +68,18 @@ OUTSIDE = [
     ("tabulated", [0.0009], TABLE, "the crack size"),
     ("tabulated", [0.0501], TABLE, "the crack size"),
     ("plate-through-edge", [0.02], EDGE | {"ends": "held"}, "ends"),
+    ("hole-through-one", [0.0721], HOLE, "a/l"),
+    ("lug-through", [0.0271], LUG, "a/l"),
+    ("lug-corner", [0.0081, 0.008], LUG, "a/t"),
+    ("lug-corner", [0.003, 0.0061], LUG, "a/c"),
+    ("hole-corner-one", [0.003, 0.0151], CORNER, "a/c"),
+    ("hole-corner-two", [0.0101, 0.005], CORNER, "a/c"),
+    ("hole-corner-one", [0.005, 0.01], CORNER | {"hole_diameter": 0.0199}, "R/t"),
+    ("hole-corner-two", [0.018, 0.081], CORNER, "2(R + c)/W"),
+    ("lug-through", [0.005], LUG | {"head": 0.0499}, "2H/W"),
+    ("lug-through", [0.005], LUG | {"hole_diameter": 0.0199}, "D/W"),
+    ("hole-through-two", [0.01], HOLE | {"hole_diameter": 0.101}, "D/W"),
+    ("hole-through-two", [0.01], HOLE | {"hole_diameter": 0.001}, "D/W"),
 ]
 
 
@@ -86,6 +101,12 @@ def test_a_crack_inside_is_not_marked() -> None:
         ("tabulated", [0.01], TABLE),
         ("plate-through-edge", [0.02], EDGE),
         ("plate-through-centre", [0.02], EDGE),
+        ("hole-through-one", [0.02], HOLE),
+        ("lug-through", [0.02], LUG),
+        ("lug-corner", [0.004, 0.004], LUG),
+        ("hole-corner-one", [0.005, 0.01], CORNER),
+        ("hole-corner-two", [0.005, 0.01], CORNER),
+        ("hole-through-two", [0.02], HOLE),
     ]
     for name, x, body in inside:
         assert np.all(KINDS[name].inside(np.asarray(x), body))

@@ -12,16 +12,8 @@ PLATE = {"width": 0.4, "thickness": 0.02}
 EDGE = PLATE | {"ends": "free"}
 INNER = PLATE | {"ligament": 0.006, "middle": 0.01}
 SPECIMEN = {"width": 0.05, "thickness": 0.025, "span": 0.2}
-HOLE = {"width": 0.1, "thickness": 0.01, "hole_diameter": 0.02}
-PINNED = HOLE | {"pinned": True}
-AT_HOLE = {
-    "L/R": lambda value: (np.array([0.01 * value]), HOLE | {"width": 1.0}),
-    "hole and crack/W": lambda value: (np.array([0.05 * value - 0.01]), HOLE),
-    "(D + ΣL)/W": lambda value: (np.array([0.1 * value - 0.02]), HOLE),
-    "2R/W": lambda value: (np.array([0.004]), PINNED | {"width": 0.02 / value}),
-    "L/(W/2 − R)": lambda value: (np.array([0.04 * value]), PINNED),
-}
 CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
+HOLE = {"width": 0.2, "thickness": 0.01, "hole_diameter": 0.04}
 
 
 def by_length(scale, body):
@@ -40,6 +32,66 @@ def long_and_shallow(value):
     """a/c = 0.1: the bound on depth is 1.25 (0.1 + 0.6) = 0.875 of the wall."""
     a = 0.02 * value * 1.25 * 0.7
     return np.array([a, 10.0 * a]), PLATE | {"width": 4.0}
+
+
+def by_hole(value):
+    return np.array([0.01]), HOLE | {"hole_diameter": 0.2 * value}
+
+
+def by_bore(value):
+    """a/R in a plate so wide that only this bound is left."""
+    return np.array([0.02 * value]), HOLE | {"width": 3.9}
+
+
+CORNER = {"width": 0.4, "thickness": 0.02, "hole_diameter": 0.04}
+LUG = {"width": 0.1, "thickness": 0.01, "hole_diameter": 0.04, "head": 0.06}
+
+
+def lug_hole(value):
+    return np.array([0.005]), LUG | {"hole_diameter": 0.1 * value}
+
+
+def lug_head(value):
+    return np.array([0.005]), LUG | {"head": 0.05 * value}
+
+
+def corner_hole(value):
+    """R/t, in a plate so wide that only this bound is left."""
+    return np.array([0.005, 0.01]), CORNER | {"hole_diameter": 0.04 * value, "width": 1.0}
+
+
+def corner_width(value):
+    return np.array([0.01, 0.2 * value - 0.02]), CORNER
+
+
+def corner_small_hole(value):
+    """Leaves the other bounds too where it is out at its upper end."""
+    return np.array([0.005, 0.01]), CORNER | {"width": 0.04 / value}
+
+
+def corners(kind):
+    return {
+        (kind, "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CORNER | {"thickness": 0.03}),
+        (kind, "a/t"): lambda value: (np.array([0.02 * value, 0.02]), CORNER),
+        (kind, "R/t"): corner_hole,
+        (kind, "2(R + c)/W"): corner_width,
+        (kind, "D/W"): corner_small_hole,
+    }
+
+
+def in_lug(x, **changes):
+    return np.array(x), LUG | changes
+
+
+LUG_CORNERS = {
+    "a/c": lambda value: in_lug([0.004 * value, 0.004]),
+    "a/t": lambda value: in_lug([0.01 * value, 0.008]),
+    "R/t": lambda value: in_lug([0.004, 0.004], thickness=0.02 / value),
+    "D/W": lambda value: in_lug([0.003, 0.003], hole_diameter=0.1 * value),
+    "2H/W": lambda value: in_lug([0.004, 0.004], head=0.05 * value),
+    "c/l": lambda value: in_lug([0.012, 0.03 * value], thickness=0.02),
+    "a/l": lambda value: in_lug([0.012, 0.03 * value], thickness=0.02),
+}
 
 
 # kind, symbol: the crack whose symbol has a value.
@@ -68,12 +120,6 @@ CRACKS = {
         np.array([0.02]),
         SPECIMEN | {"span": 0.05 * value},
     ),
-    **{
-        (f"hole-through-{n}", symbol): crack
-        for n in ("one", "two")
-        for symbol, crack in AT_HOLE.items()
-    },
-    ("hole-through-two", "(D + ΣL)/W"): lambda value: (np.array([0.05 * value - 0.01]), HOLE),
     ("cylinder-axial-outside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-outside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-outside", "t/R"): by_radius,
@@ -87,6 +133,18 @@ CRACKS = {
     ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-inside", "t/R"): by_radius,
+    ("hole-through-one", "a/R"): by_bore,
+    ("hole-through-one", "D/W"): by_hole,
+    ("hole-through-one", "a/l"): by_length(0.08, HOLE),
+    ("hole-through-two", "a/R"): by_bore,
+    ("hole-through-two", "D/W"): by_hole,
+    ("hole-through-two", "a/l"): by_length(0.08, HOLE),
+    ("lug-through", "D/W"): lug_hole,
+    ("lug-through", "2H/W"): lug_head,
+    ("lug-through", "a/l"): by_length(0.03, LUG),
+    **{("lug-corner", symbol): crack for symbol, crack in LUG_CORNERS.items()},
+    **corners("hole-corner-one"),
+    **corners("hole-corner-two"),
     ("bar-surface", "a/D"): by_length(0.06, {"diameter": 0.06}),
 }
 BOUNDS = [

@@ -1,0 +1,1 @@
+"""Full-size proofs, left out of the normal suite."""
