@@ -64,9 +64,11 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
             ("end along the thickness (φ = 90°)", "end along the width (φ = 0)"),
         ),
         parts.step_reference(
-            "σ_ref = [P_b + √(P_b² + 9 P_m² (1 − α)²)] / [3 (1 − α)²], α = (a/t)/(1 + t/c)",
+            "σ_ref = [p_b + √(p_b² + 9 p_m²)] / 3, p_b = P_b/(1 − α)², α = (a/t)/(1 + t/c), "
+            "p_m the larger of P_m/(1 − α) and P_m W/[√(W² − 2ac(W − c)/t) − ac/t]",
             f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, a = {parts.millimetres(x[0])}, "
-            f"c = {parts.millimetres(x[1])}, t = {parts.millimetres(body['thickness'])}",
+            f"c = {parts.millimetres(x[1])}, t = {parts.millimetres(body['thickness'])}, "
+            f"W = {parts.millimetres(body['width'])}",
             _reference(x, loads, body),
             reference_plates.CORNER.source,
         ),

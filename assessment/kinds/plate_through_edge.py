@@ -1,12 +1,13 @@
 """plate-through-edge: a through crack at one edge of a plate, membrane stress and in-plane bending.
 
-Ends free to rotate. For held ends no solution is confirmed here: the free-ended one, which is
-higher, is shown and marked, so that the case is referred.
+Ends free to turn, or held: two sections, held_length apart with the crack between them, stay
+parallel. Held without held_length says too little: the free-ended solution, which is higher, is
+shown and marked, so that the case is referred.
 """
 
 import numpy as np
 
-from assessment.relations import edge_crack, reference_stress
+from assessment.relations import edge_crack, edge_held, reference_plates, reference_stress
 from assessment.validity import Floats, Mark
 
 from . import parts
@@ -17,22 +18,43 @@ def _relative(x: Floats, body: Body) -> Floats:
     return np.asarray(x[0] / body["width"])
 
 
+def _holds(body: Body) -> bool:
+    """The ends are held, and it is known how far apart."""
+    return body["ends"] == "held" and "held_length" in body
+
+
+def _long(body: Body) -> Floats:
+    return np.asarray(body["held_length"] / body["width"])
+
+
+def _tension(relative: Floats, body: Body) -> Floats:
+    if _holds(body):
+        return edge_held.tension(relative, _long(body))
+    return edge_crack.tension(relative)
+
+
 def _k(x: Floats, loads: Loads, body: Body) -> Floats:
     relative = _relative(x, body)
     with np.errstate(invalid="ignore"):
-        stress = edge_crack.tension(relative) * parts.load(loads, "membrane")
+        stress = _tension(relative, body) * parts.load(loads, "membrane")
         stress = stress + edge_crack.bending(relative) * parts.load(loads, "bending")
         return np.asarray(stress * np.sqrt(np.pi * x[0]))[None]
 
 
 def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
-    return reference_stress.edge(
-        parts.load(loads, "membrane"), parts.load(loads, "bending"), _relative(x, body)
-    )
+    membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
+    formula = reference_plates.edge_held if _holds(body) else reference_stress.edge
+    return formula(membrane, bending, _relative(x, body))
 
 
 def _checks(x: Floats, body: Body) -> parts.Checks:
     value = {"a/W": _relative(x, body)}
+    if _holds(body):
+        return (
+            (edge_held.VALIDITY, value | {"L/W": _long(body)}),
+            (edge_crack.BENDING, value),
+            (reference_plates.EDGE_HELD, value),
+        )
     held = {"ends": np.asarray(1.0 if body["ends"] == "held" else 0.0)}
     return (
         (edge_crack.TENSION, value),
@@ -48,6 +70,8 @@ def _impossible(x: Floats, body: Body) -> str | None:
             f"the crack ({parts.millimetres(x[0])}) is as long as the plate is wide "
             f"({parts.millimetres(body['width'])})."
         )
+    if body["ends"] == "free" and "held_length" in body:
+        return "a held length goes with ends that are held, and these are free."
     return None
 
 
@@ -55,19 +79,26 @@ def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
     return parts.marks_of(_checks(x, body))
 
 
+_FREE = "F_m = √(2/(πα) tan(πα/2)) [0.752 + 2.02 α + 0.37 (1 − sin(πα/2))³] / cos(πα/2)"
+_FREE_REFERENCE = "σ_ref = 2m + √(4m² + n²), n = P_m/(1 − α), m = (P_b/6 + P_m α/2)/(1 − α)²"
+_HELD = "F_m = F_free − F_b · 6πA/(L/W + 6πB), A = ∫₀^α x F_free F_b dx, B = ∫₀^α x F_b² dx"
+_HELD_REFERENCE = "σ_ref = 2m + √(4m² + n²), n = P_m/(1 − α), m = (P_b/6)/(1 − α)²"
+
+
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
     relative = _relative(x, body)
     numbers = f"α = a/W = {float(relative):.4g}"
     membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
-    tension, bend = edge_crack.tension(relative), edge_crack.bending(relative)
+    tension, bend = _tension(relative, body), edge_crack.bending(relative)
+    form, said, source = _FREE, numbers, edge_crack.TENSION.source
+    reference, reference_source = _FREE_REFERENCE, reference_stress.EDGE.source
+    if _holds(body):
+        form, source = _HELD, edge_held.VALIDITY.source
+        said = f"{numbers}, F_free = {float(edge_crack.tension(relative)):.4g}, "
+        said += f"F_b = {float(bend):.4g}, L/W = {float(_long(body)):.4g}"
+        reference, reference_source = _HELD_REFERENCE, reference_plates.EDGE_HELD.source
     return (
-        parts.step_factor(
-            "Geometry factor, tension",
-            "F_m = √(2/(πα) tan(πα/2)) [0.752 + 2.02 α + 0.37 (1 − sin(πα/2))³] / cos(πα/2)",
-            numbers,
-            tension,
-            edge_crack.TENSION.source,
-        ),
+        parts.step_factor("Geometry factor, tension", form, said, tension, source),
         parts.step_factor(
             "Geometry factor, bending",
             "F_b = 1.122 − 1.40 α + 7.33 α² − 13.08 α³ + 14.0 α⁴, any-depth form from α = 0.63",
@@ -81,13 +112,13 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
             f"F_m = {float(tension):.4g}, F_b = {float(bend):.4g}, σ_m = {membrane:g} MPa, "
             f"σ_b = {bending:g} MPa, a = {parts.millimetres(x[0])}",
             _k(x, loads, body)[0],
-            edge_crack.TENSION.source,
+            source,
         ),
         parts.step_reference(
-            "σ_ref = 2m + √(4m² + n²), n = P_m/(1 − α), m = (P_b/6 + P_m α/2)/(1 − α)²",
+            reference,
             f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, {numbers}",
             _reference(x, loads, body),
-            reference_stress.EDGE.source,
+            reference_source,
         ),
     )
 
@@ -96,6 +127,7 @@ KIND = Kind(
     name="plate-through-edge",
     words="a crack through the plate, from one edge",
     body_keys=("width_mm", "thickness_mm", "ends"),
+    optional_body_keys=("held_length_mm",),
     load_keys=("membrane_mpa", "bending_mpa"),
     sizes=("length_mm",),
     points=("tip",),
@@ -113,7 +145,9 @@ KIND = Kind(
         edge_crack.TENSION,
         edge_crack.BENDING,
         edge_crack.HELD,
+        edge_held.VALIDITY,
         reference_stress.EDGE,
+        reference_plates.EDGE_HELD,
     ),
     working=_working,
     becomes=lambda x, body: None,

@@ -33,8 +33,8 @@ BENDING = Validity(
     witness="from memory; confirmed by an independent computation and by finite elements",
 )
 HELD = Validity(
-    relation="an edge crack in a plate whose ends are held",
-    source="none confirmed here: the free-ended solution is shown, which is the higher",
+    relation="an edge crack in a plate whose ends are held, no held length given",
+    source="none without body.held_length_mm: the free-ended solution, the higher one, is shown",
     accuracy="none stated",
     ranges=(Range("ends", "the ends are held (1) and not free (0)", 0.0, 0.0, stated=False),),
     witness="none",

@@ -15,15 +15,31 @@ BOTH_EDGES = Validity(
     ranges=(Range("2a/W", "the two crack lengths over plate width", 0.0, 1.0, False, True),),
     witness="derivation",
 )
+EDGE_HELD = Validity(
+    relation="reference stress of an edge crack in a plate, ends held from turning",
+    source=(
+        "lower-bound limit analysis of the ligament, plane stress, derived here: the strip beside "
+        "the crack carries the force straight to the ends, which take its eccentricity; bending in "
+        "full"
+    ),
+    accuracy="a lower bound of the limit load",
+    ranges=(Range("a/W", "crack length over plate width", 0.0, 1.0, False, True),),
+    witness="derivation; limits: net section in tension, no crack in bending 2/3",
+)
 CORNER = Validity(
     relation="reference stress of a corner crack in a plate",
     source=(
-        "BS 7910:2013, annex P, surface flaw in a plate (bending restrained), local, of which a "
-        "corner crack is one half by symmetry about the side of the plate"
+        "the larger in membrane stress of BS 7910:2013, annex P, surface flaw in a plate (bending "
+        "restrained), local, of which a corner crack is one half by symmetry about the side of the "
+        "plate; and of a lower-bound limit analysis of the whole section, free to turn in the "
+        "plane of the plate, derived here"
     ),
-    accuracy="a lower bound of the limit load where the plate cannot bend about its own plane",
+    accuracy="a lower bound of the limit load",
     ranges=(Range("a/t", "crack depth over wall thickness", 0.0, 1.0, False, True),),
-    witness="from memory for the surface flaw; symmetry; limits: no crack, long crack",
+    witness=(
+        "from memory for the surface flaw; derivation, an edge crack being the limit; limits: no "
+        "crack, long crack"
+    ),
 )
 EMBEDDED = Validity(
     relation="reference stress of a crack inside a plate",
@@ -50,11 +66,31 @@ def both_edges(membrane: Floats, relative: Floats) -> Floats:
     return np.asarray(np.abs(membrane) / (1.0 - relative))
 
 
+def edge_held(membrane: Floats, bending: Floats, relative: Floats) -> Floats:
+    """2 m + √(4 m² + n²), n = P_m/(1 − α), m = (P_b/6)/(1 − α)², α = a/W."""
+    left = 1.0 - relative
+    return ligament(membrane, np.asarray(bending) / 6.0 / left, left)
+
+
 def corner(
     membrane: Floats, bending: Floats, a: Floats, c: Floats, thickness: float, width: float
 ) -> Floats:
-    """As a surface flaw of half length c in a plate of twice the width."""
-    return reference_stress.surface(membrane, bending, a, c, thickness, 2.0 * width)
+    """[p_b + √(p_b² + 9 p_m²)] / 3, with p_b = P_b/(1 − α)² and p_m the larger of P_m/(1 − α) and
+    P_m W / [√(W² − 2 a c (W − c)/t) − a c/t].
+
+    α = (a/t)/(1 + t/c) where W ≥ c + t, else (a/t)(c/W): a surface flaw of half length c in a plate
+    of twice the width. The second p_m is that of a section without the block a by c, pulled in the
+    middle of its width and free to turn there: ±p_m on both sides of the line about which it does
+    not turn. Each strip of it bends as a strip that also carries ±p_m.
+    """
+    pm, pb = np.abs(membrane), np.abs(bending)
+    nil = np.zeros(())
+    local = reference_stress.surface(pm, nil, a, c, thickness, 2.0 * width)
+    bent = 1.5 * reference_stress.surface(nil, pb, a, c, thickness, 2.0 * width)
+    part = a / thickness * c / width
+    turning = np.sqrt(1.0 - 2.0 * part * (1.0 - c / width)) - part
+    pulled = np.maximum(local, pm / turning)
+    return np.asarray((bent + np.sqrt(bent**2 + 9.0 * pulled**2)) / 3.0)
 
 
 def embedded(

@@ -10,6 +10,7 @@ from assessment import KINDS
 
 PLATE = {"width": 0.4, "thickness": 0.02}
 EDGE = PLATE | {"ends": "free"}
+HELD = PLATE | {"ends": "held", "held_length": 1.2}
 INNER = PLATE | {"ligament": 0.006, "middle": 0.01}
 SPECIMEN = {"width": 0.05, "thickness": 0.025, "span": 0.2}
 CYLINDER = {"thickness": 0.02, "inner_radius": 0.1}
@@ -94,8 +95,17 @@ LUG_CORNERS = {
 }
 
 
-# kind, symbol: the crack whose symbol has a value.
+# kind, symbol: the crack whose symbol has a value. Where one kind uses two relations of one symbol
+# in different bodies, the relation's words stand in front.
+HELD_RELATIONS = [
+    r.relation for r in KINDS["plate-through-edge"].relations if "turning" in r.relation
+]
 CRACKS = {
+    **{(relation, "a/W"): by_length(0.4, HELD) for relation in HELD_RELATIONS},
+    ("plate-through-edge", "L/W"): lambda value: (
+        np.array([0.1]),
+        HELD | {"held_length": 0.4 * value},
+    ),
     ("plate-through-centre", "2a/W"): by_length(0.2, PLATE),
     ("plate-through-edge", "a/W"): by_length(0.4, EDGE),
     ("plate-through-edge", "ends"): lambda value: (
@@ -158,6 +168,10 @@ BOUNDS = [
 ]
 
 
+def crack_of(name, relation, range_):
+    return CRACKS.get((relation.relation, range_.symbol)) or CRACKS[name, range_.symbol]
+
+
 def words(bound):
     name, relation, range_, side = bound
     return f"{name}: {relation.relation}: {range_.symbol} {side}"
@@ -168,7 +182,7 @@ def test_a_crack_just_outside_is_marked_by_its_kind(bound):
     name, relation, range_, side = bound
     away = -1e-9 if side == "low" else 1e-9
     value = getattr(range_, side) + (away if range_.symbol != "ends" else 1.0)
-    x, body = CRACKS[name, range_.symbol](value)
+    x, body = crack_of(name, relation, range_)(value)
     with np.errstate(divide="ignore", invalid="ignore"):
         assert not np.all(KINDS[name].inside(x, body))
         marks = KINDS[name].marks(x, body)
@@ -184,7 +198,7 @@ def test_a_crack_just_inside_is_not_marked_for_that_bound(bound):
     value = getattr(range_, side) + (inward if range_.symbol != "ends" else 0.0)
     if range_.low == range_.high:
         value = range_.low
-    x, body = CRACKS[name, range_.symbol](value)
+    x, body = crack_of(name, relation, range_)(value)
     with np.errstate(divide="ignore", invalid="ignore"):
         marks = KINDS[name].marks(x, body)
     assert (relation.relation, range_.symbol) not in {(m.relation, m.range.symbol) for m in marks}

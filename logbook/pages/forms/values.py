@@ -45,6 +45,9 @@ HINTS = {
     "loading.temperature_c": gettext_lazy("lowest metal temperature at which the peak can occur"),
     "per_usage": gettext_lazy("cycles per count of the counter"),
     "body.ends": gettext_lazy("free to rotate, or held: write free or held"),
+    "body.held_length_mm": gettext_lazy(
+        "between the two sections that held ends keep parallel; left empty, held ends are referred"
+    ),
     "body.table": gettext_lazy("[[depth in mm, geometry factor], …]"),
     "criteria.fracture": gettext_lazy("diagram, or toughness"),
     "criteria.load_reserve": gettext_lazy("factor on load that must remain"),

@@ -33,9 +33,11 @@ def _graded(length: float, cells: int, first: float) -> NDArray[np.float64]:
 
 
 def geometry_factor(kind: str, relative: float, load: str, height: float = 3.0) -> float:
-    """K ÷ (σ √(πa)) for a strip of width 1 (half width for "centre").
+    """K ÷ (σ √(πa)) for a strip of width 1 (half width for "centre" and "both edges").
 
-    kind : "centre" (symmetric about x = 0) or "edge" (free to bend)
+    kind : "centre" (symmetric about x = 0), "both edges" (symmetric about x = 1), "edge" (free to
+        bend) or "held" (an edge crack; the end at y = height moves evenly, its sides free, and σ is
+        the force it takes)
     relative : a ÷ width
     load : "tension" (unit stress at y = height) or "bending" (1 − 2x at y = height)
     """
@@ -46,16 +48,25 @@ def geometry_factor(kind: str, relative: float, load: str, height: float = 3.0) 
     ys = _graded(height, 18, first)
     mesh = MeshQuad.init_tensor(xs, ys)
     basis = Basis(mesh, ElementVector(ElementQuad2()), intorder=5)
+    stiffness = _stiffness().assemble(basis)
+    fixed = _fixed(mesh, basis, a, kind, 1e-3 * first)
+    if kind == "held":
+        end = basis.get_dofs(mesh.facets_satisfying(lambda x: np.isclose(x[1], height))).all("u^2")
+        moved = basis.zeros()
+        moved[end] = 1.0
+        u = solve(*condense(stiffness, x=moved, D=np.union1d(fixed, end)))
+        return _factor_from_j(basis, u, a, reach) / float((stiffness @ u)[end].sum())
+    u = solve(*condense(stiffness, _top_load(mesh, basis, height, load), D=fixed))
+    return _factor_from_j(basis, u, a, reach)
 
+
+def _stiffness():  # type: ignore[no-untyped-def]
     @BilinearForm
     def stiffness(u, v, w):  # type: ignore[no-untyped-def]
         e, g = sym_grad(u), sym_grad(v)
         return LAME * trace(e) * trace(g) + 2 * SHEAR * ddot(e, g)
 
-    force = _top_load(mesh, basis, height, load)
-    fixed = _fixed(mesh, basis, a, kind, 1e-3 * first)
-    u = solve(*condense(stiffness.assemble(basis), force, D=fixed))
-    return _factor_from_j(basis, u, a, reach)
+    return stiffness
 
 
 def _top_load(mesh, basis, height, load):  # type: ignore[no-untyped-def]
@@ -77,8 +88,9 @@ def _top_load(mesh, basis, height, load):  # type: ignore[no-untyped-def]
 def _fixed(mesh, basis, a, kind, tolerance):  # type: ignore[no-untyped-def]
     ahead = mesh.facets_satisfying(lambda x: (np.abs(x[1]) < tolerance) & (x[0] > a))
     fixed = basis.get_dofs(ahead).all("u^2")
-    if kind == "centre":
-        middle = mesh.facets_satisfying(lambda x: np.abs(x[0]) < tolerance)
+    if kind in ("centre", "both edges"):
+        at = 0.0 if kind == "centre" else 1.0
+        middle = mesh.facets_satisfying(lambda x: np.abs(x[0] - at) < tolerance)
         return np.union1d(fixed, basis.get_dofs(middle).all("u^1"))
     far = basis.get_dofs(mesh.facets_satisfying(lambda x: np.isclose(x[0], 1.0))).all("u^1")
     return np.union1d(fixed, far[[np.argmin(basis.doflocs[1, far])]])
