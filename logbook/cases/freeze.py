@@ -28,7 +28,14 @@ from logbook.models import (
 )
 
 # A crack whose depth nobody knows is taken to go through, in the kind that says so.
-THROUGH_OF = {"plate-surface": "plate-through-centre"}
+THROUGH_OF = {
+    "plate-surface": "plate-through-centre",
+    "hole-corner-one": "hole-through-one",
+    "hole-corner-two": "hole-through-two",
+    "lug-corner": "lug-through",
+    "cylinder-axial-inside": "cylinder-axial-through",
+    "cylinder-axial-outside": "cylinder-axial-through",
+}
 
 
 @dataclass(frozen=True)

@@ -29,7 +29,11 @@ SHAPES = {
     "plate-through-centre": "through",
     "plate-through-edge": "edge",
     "plate-surface": "surface",
+    "specimen-compact-tension": "edge",
+    "specimen-edge-bend": "edge",
     "cylinder-axial-inside": "surface",
+    "cylinder-axial-outside": "surface",
+    "cylinder-axial-through": "through",
     "bar-surface": "bar",
 }
 

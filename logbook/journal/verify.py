@@ -140,7 +140,35 @@ def _head(faults: list[Fault], size: int, frontier: list[bytes]) -> None:
         faults.append(Fault("the head", "its root is not the root of the leaves"))
 
 
+def _said(kind: str, name: str) -> dict[int, str]:
+    """What the leaves of a kind say of a digest: number or id → SHA-256."""
+    held = {}
+    for leaf in Leaf.objects.filter(kind=kind).iterator(chunk_size=CHUNK):
+        try:
+            content = json.loads(bytes(leaf.payload))["content"]
+            held[int(content[name])] = str(content["sha256"])
+        except (ValueError, KeyError, TypeError):
+            continue  # a leaf that does not read is a fault of its own
+    return held
+
+
+def _all_names() -> Iterator[Fault | None]:
+    """Every name that a leaf holds the digest of stands beside it."""
+    beside: dict[int, set[str]] = {}
+    for leaf_id, key in NameBeside.objects.values_list("leaf_id", "key"):
+        beside.setdefault(leaf_id, set()).add(key)
+    for leaf in Leaf.objects.order_by("index").iterator(chunk_size=CHUNK):
+        try:
+            held = set(json.loads(bytes(leaf.payload)).get("names") or {})
+        except (ValueError, AttributeError):
+            continue
+        for key in sorted(held - beside.get(leaf.pk, set())):
+            yield Fault(f"entry {leaf.entry_number}", f'the name "{key}" beside it is missing')
+        yield None
+
+
 def _names() -> Iterator[Fault | None]:
+    yield from _all_names()
     names = NameBeside.objects.select_related("leaf").order_by("leaf_id", "key")
     for row in names.iterator(chunk_size=CHUNK):
         try:
@@ -183,17 +211,25 @@ def _triggers() -> Iterator[Fault | None]:
 
 def _photos() -> Iterator[Fault | None]:
     arrived = Photo.objects.filter(arrived_at__isnull=False).order_by("pk")
+    said = _said("photo-arrived", "photo")
     for photo in arrived.iterator(chunk_size=CHUNK):
+        if said.get(photo.pk) != photo.sha256:
+            yield Fault(f"photo {photo.pk}", "is not the one whose digest its leaf holds")
         path = Path(settings.DATA_DIR) / "photos" / photo.sha256[:2] / photo.sha256
         yield _file(f"photo {photo.pk}", path, photo.sha256)
 
 
 def _records() -> Iterator[Fault | None]:
-    expected = 1
+    expected, said = 1, _said("record-issued", "record")
     for record in Record.objects.order_by("number"):
         if record.number != expected:
             yield Fault(f"record {record.number}", f"record {expected} is missing before it")
         expected = record.number + 1
+        if said.get(record.number, "") != record.sha256:
+            yield Fault(
+                f"record {record.number}",
+                "is not the one whose digest was written as it was issued",
+            )
         if record.state == Record.State.ISSUED:
             path = record_path(record)
             yield _file(f"record {record.number}", path, record.sha256)

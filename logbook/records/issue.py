@@ -9,16 +9,18 @@ import hashlib
 import logging
 import os
 import tempfile
+import uuid
 from collections.abc import Sequence
 from datetime import datetime, timedelta
 from pathlib import Path
 
 from django.conf import settings
-from django.db import connection
+from django.db import connection, transaction
 from django.db.models import Max
 
 from logbook import clock
 from logbook.errors import Refusal
+from logbook.journal import append
 from logbook.models import Deferral, Disposition, Record
 
 from .content import RecordContent
@@ -28,6 +30,7 @@ from .render import render_record
 log = logging.getLogger("logbook.records")
 # Taken by those who reserve a number, before the journal's head; any constant of our own does.
 NUMBER_LOCK = 7_302_115
+ISSUED, VOID = "record-issued", "record-void"
 
 
 def reserve_number(
@@ -120,16 +123,36 @@ def _issued(content: RecordContent, pdf: bytes, digest: str) -> dict[str, object
 
 
 def _mark(record: Record, **fields: object) -> None:
-    """Only a reserved record changes; one that somebody else has marked is read back."""
-    Record.objects.filter(pk=record.pk, state=Record.State.RESERVED).update(**fields)
+    """Only a reserved record changes; one that somebody else has marked is read back. What was
+    issued is said in a leaf, so that neither file nor row can be put in another's place."""
+    with transaction.atomic():
+        reserved = Record.objects.filter(pk=record.pk, state=Record.State.RESERVED)
+        if reserved.update(**fields):
+            issued = fields["state"] == Record.State.ISSUED
+            append(
+                ISSUED if issued else VOID,
+                {
+                    "record": record.number,
+                    "sha256": str(fields.get("sha256", "")),
+                    "void_why": str(fields.get("void_why", "")),
+                },
+                act=uuid.uuid4(),
+                by=None,
+                site=record.site,
+                because_of=[_act_of(record).leaf_id],
+            )
     record.refresh_from_db()
 
 
 def _signed_at(record: Record) -> datetime:
+    return _act_of(record).leaf.at
+
+
+def _act_of(record: Record) -> Disposition | Deferral:
     act = record.disposition or record.deferral
     if act is None:
         raise ValueError(f"record {record.number} stands for nothing")
-    return act.leaf.at
+    return act
 
 
 def _store(number: int, pdf: bytes) -> str:

@@ -37,7 +37,7 @@ def test_the_whole_way(deciding: Deciding) -> None:
     crack = deciding.found()
     leaves = Leaves()
     d = deciding.sign(deciding.reviewed(crack))
-    assert leaves.new() == ["review", "sign-disposition"]
+    assert leaves.new() == ["review", "sign-disposition", "record-issued"]
     row = deciding.standing(crack)
     assert (row.state, row.disposition, row.held) == ("in-force", d, False)
     assert d.record.state == Record.State.ISSUED and d.record.number == 1

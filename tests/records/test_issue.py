@@ -15,6 +15,7 @@ from django.db import transaction
 from logbook import clock
 from logbook.errors import Refusal
 from logbook.figures.of_assessment import figures_of
+from logbook.journal.verify import verify
 from logbook.models import Deferral, DeferralRequest, Head, Photo, Record
 from logbook.records import issue as issuing
 from logbook.records.gather import gather
@@ -51,8 +52,8 @@ def test_a_signed_record_is_issued_stored_and_reprinted_as_it_was():
 
 def test_the_root_includes_the_signature():
     _, disposition = usual()
-    record = issue(disposition.record)
     head = Head.objects.get(pk=1)
+    record = issue(disposition.record)
     assert record.journal_size == head.size == disposition.leaf.index + 1
     assert record.journal_root == bytes(head.root).hex()
     assert record.journal_root[:32] in text_of(stored_bytes(record), 1, 1)
@@ -255,3 +256,16 @@ def test_a_deferral_has_a_record_of_its_own():
     assert "put off from 14 Dec 2026 or 14,400 lifts to 8 Jan 2027" in said
     whole = text_of(stored_bytes(record), 1, 99)
     assert "lock is drained" in whole and "J. Brandt" in whole
+
+
+def test_a_record_put_in_anothers_place_is_found():
+    """File and row are changed together; the leaf written as it was issued says otherwise."""
+    _, disposition = usual()
+    record = issue(disposition.record)
+    assert verify().sound
+    forged = stored_bytes(record) + b"%%"
+    digest = hashlib.sha256(forged).hexdigest()
+    path_of(record.number, digest).write_bytes(forged)
+    Record.objects.filter(pk=record.pk).update(sha256=digest)
+    faults = [str(fault) for fault in verify().faults]
+    assert any("written as it was issued" in fault for fault in faults), faults

@@ -41,7 +41,11 @@ HINTS = {
     "growth.law": gettext_lazy("paris, two-stage or walker"),
     "growth.c": gettext_lazy("m/cycle with ΔK in MPa√m"),
     "bounding.stands_for": gettext_lazy("such as: lowest of three tests; mean plus two deviations"),
-    "loading.residual": gettext_lazy("none: and why there is none"),
+    "loading.residual": gettext_lazy(
+        "none: and why there is none. Where there is some, leave this empty and name "
+        "loading.residual.membrane_mpa, or loading.residual.level (as-welded, "
+        "heat-treated-along, heat-treated-across) with loading.residual.source, below"
+    ),
     "loading.temperature_c": gettext_lazy("lowest metal temperature at which the peak can occur"),
     "per_usage": gettext_lazy("cycles per count of the counter"),
     "body.ends": gettext_lazy("free to rotate, or held: write free or held"),
