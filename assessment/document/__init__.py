@@ -89,8 +89,8 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
 
 
 def _named(loading: Loading) -> frozenset[str]:
-    """The loads that are not nil, at the peak or in a cycle."""
-    named = {name for name, value in loading.peak.items() if value}
+    """The loads that are not nil, at the peak, in a cycle or as residual stress."""
+    named = {name for name, value in (*loading.peak.items(), *loading.residual.items()) if value}
     for block in loading.cycles:
         named |= {name for name, value in block.ranges.items() if value}
         named |= {name for name, value in (block.maxima or {}).items() if value}

@@ -71,7 +71,7 @@ class Kind:
     working : (x, loads, body) -> tuple of WorkingStep for one single case
     placed : (depth_m | None, length_m | None, loads, body) -> body with what else the document
         fixes and growth leaves alone: where the middle of an inner crack lies, whether there is
-        a pin load. loads : names of those that are not nil in peak or cycles
+        a pin load. loads : names of those that are not nil in peak, cycles or residual stress
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
     leaks_to : as ``becomes``, for a pressure boundary: what it is once it leaks. It does not go on

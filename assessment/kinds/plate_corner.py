@@ -11,6 +11,11 @@ from .base import Body, Kind, Loads, WorkingStep
 AT = ("end along the thickness", "end along the width")
 
 
+def _placed(depth: float | None, length: float | None, loads: frozenset[str], body: Body) -> Body:
+    """Whether the plate is bent, for which the relation is confirmed less far."""
+    return {**body, "bent": "bending" in loads}
+
+
 def _front(depth: float | None, length: float | None, body: Body) -> Floats:
     """x[0] = a, along the thickness; x[1] = c, along the width."""
     return two_points.two(depth, length)
@@ -30,7 +35,14 @@ def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
 
 def _checks(x: Floats, body: Body) -> parts.Checks:
     values = corner_crack.validity_values(x[0], x[1], body["thickness"], body["width"])
-    return ((corner_crack.VALIDITY, values), (reference_plates.CORNER, {"a/t": values["a/t"]}))
+    checks = [
+        (corner_crack.VALIDITY, values),
+        (reference_plates.CORNER, {"a/t": values["a/t"]}),
+    ]
+    # A body that was not placed does not say: then bending is not ruled out.
+    if body.get("bent", True):
+        checks.append((corner_crack.BENDING, values))
+    return tuple(checks)
 
 
 def _impossible(x: Floats, body: Body) -> str | None:
@@ -44,7 +56,8 @@ def _impossible(x: Floats, body: Body) -> str | None:
 
 def _becomes(x: Floats, body: Body) -> tuple[str, float | None, float, Body] | None:
     """Through the wall it is assessed as an edge crack, its ends free: the higher of the two."""
-    return ("plate-through-edge", None, float(x[1]), {**body, "ends": "free"})
+    plate = {"width": body["width"], "thickness": body["thickness"], "ends": "free"}
+    return ("plate-through-edge", None, float(x[1]), plate)
 
 
 def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
@@ -82,6 +95,7 @@ KIND = Kind(
     load_keys=("membrane_mpa", "bending_mpa"),
     sizes=("depth_mm", "length_mm"),
     points=AT,
+    placed=_placed,
     front=_front,
     sizes_of=lambda x, body: (x[0], x[1]),
     stress_intensity=_k,
@@ -91,7 +105,7 @@ KIND = Kind(
     wall=lambda x, body: np.stack([body["thickness"] - x[0], body["width"] - x[1]]),
     inside=lambda x, body: parts.all_hold(_checks(x, body)),
     marks=_marks,
-    relations=(corner_crack.VALIDITY, reference_plates.CORNER),
+    relations=(corner_crack.VALIDITY, corner_crack.BENDING, reference_plates.CORNER),
     working=_working,
     becomes=_becomes,
 )

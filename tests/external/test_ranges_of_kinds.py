@@ -120,6 +120,7 @@ CRACKS = {
     ("plate-corner", "a/c"): lambda value: (np.array([0.008 * value, 0.008]), PLATE),
     ("plate-corner", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), PLATE),
     ("plate-corner", "c/W"): lambda value: (np.array([0.005, 0.4 * value]), PLATE),
+    ("plate-corner", "c/W in bending"): lambda value: (np.array([0.005, 0.4 * value]), PLATE),
     ("plate-embedded", "a/c"): lambda value: (np.array([0.004 * value, 0.004]), INNER),
     ("plate-embedded", "a/(a + p)"): lambda value: (np.array([0.01 * value, 0.01]), INNER),
     ("plate-embedded", "2a/t"): lambda value: (np.array([0.01 * value, 0.02]), INNER),
