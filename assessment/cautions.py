@@ -53,6 +53,7 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
         yield f"Cycles, as stated: {loading.cycles_said}."
     if loading.temperature is None:
         yield "No metal temperature is given: the toughness is taken to hold at the lowest one."
+    yield from _closed_ends(case)
     if case.material.typical:
         yield "Material values are typical ones from a handbook and are not for acceptance."
     if became_through:
@@ -60,6 +61,20 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
             "At its bounding size the crack goes through the wall and is assessed as a through "
             "crack; bending of the wall then counts as membrane stress at its outer-fibre value."
         )
+
+
+def _closed_ends(case: Case) -> Iterator[str]:
+    """Pressure on a girth crack: the axial stress that closed ends bring is easily forgotten."""
+    loads, body = case.loading.peak, case.body
+    pressure = loads.get("pressure", 0.0)
+    if "membrane_mpa" not in case.crack.kind.load_keys or pressure == 0.0:
+        return
+    bore, outer = body["inner_radius"], body["inner_radius"] + body["thickness"]
+    axial = pressure * bore**2 / (outer**2 - bore**2)
+    yield (
+        f"The axial stress of closed ends is not implied: where the ends are closed, {axial:.4g} "
+        f"MPa of the membrane stress of {loads['membrane']:g} MPa is due to the pressure."
+    )
 
 
 def _of_marks(marks: Sequence[Mark]) -> Iterator[str]:

@@ -27,6 +27,8 @@ class Range:
     high_open: bool = False
     unit: str = ""
     stated: bool = True
+    basis: str = "published"
+    """What the bound rests on: "published", or "confirmed here" by an own computation."""
 
     def holds(self, value: Floats | float) -> NDArray[np.bool_]:
         """True where the value lies inside; NaN lies outside."""
@@ -83,6 +85,6 @@ class Mark:
         high = "" if r.high is None else f" {'<' if r.high_open else '≤'} {r.high:g}"
         unit = f" {r.unit}" if r.unit else ""
         return (
-            f"{r.meaning} ({r.symbol}) is {self.value:.4g}{unit}; {self.relation} is published for "
+            f"{r.meaning} ({r.symbol}) is {self.value:.4g}{unit}; {self.relation} is {r.basis} for "
             f"{low}{r.symbol}{high}{unit}. An engineer decides."
         )

@@ -5,6 +5,8 @@ from .base import Body, Kind, Loads, WorkingStep
 from .cylinder_axial_inside import KIND as CYLINDER_AXIAL_INSIDE
 from .cylinder_axial_outside import KIND as CYLINDER_AXIAL_OUTSIDE
 from .cylinder_axial_through import KIND as CYLINDER_AXIAL_THROUGH
+from .cylinder_girth_inside import KIND as CYLINDER_GIRTH_INSIDE
+from .cylinder_girth_outside import KIND as CYLINDER_GIRTH_OUTSIDE
 from .cylinder_girth_through import KIND as CYLINDER_GIRTH_THROUGH
 from .hole_corner import ONE as HOLE_CORNER_ONE
 from .hole_corner import TWO as HOLE_CORNER_TWO
@@ -36,6 +38,8 @@ KINDS: dict[str, Kind] = {
         CYLINDER_AXIAL_INSIDE,
         CYLINDER_AXIAL_OUTSIDE,
         CYLINDER_AXIAL_THROUGH,
+        CYLINDER_GIRTH_INSIDE,
+        CYLINDER_GIRTH_OUTSIDE,
         CYLINDER_GIRTH_THROUGH,
         BAR_SURFACE,
         HOLE_CORNER_ONE,

@@ -33,16 +33,32 @@ def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
     return parts.marks_of(_checks(x, body))
 
 
+def hoop(loads: Loads, body: Body) -> float | None:
+    """The nominal stress that the geometry factor is divided by; None without pressure."""
+    stress = float(parts.load(loads, "pressure")) * body["inner_radius"] / body["thickness"]
+    return float(stress) if stress != 0.0 else None
+
+
+def becomes_through(x: Floats, body: Body) -> tuple[str, float | None, float, Body]:
+    """Through the wall it is a through crack of its surface length."""
+    return ("cylinder-axial-through", None, float(2.0 * x[1]), body)
+
+
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
     pressure = float(parts.load(loads, "pressure"))
     numbers = (
         f"p = {pressure:g} MPa, R_i = {parts.millimetres(body['inner_radius'])}, "
         f"t = {parts.millimetres(body['thickness'])}"
     )
-    hoop = pressure * body["inner_radius"] / body["thickness"]
+    nominal = pressure * body["inner_radius"] / body["thickness"]
     return (
         WorkingStep(
-            "Hoop stress (nominal)", "σ_h = p R_i/t", numbers, hoop, "MPa", "thin-wall equilibrium"
+            "Hoop stress (nominal)",
+            "σ_h = p R_i/t",
+            numbers,
+            nominal,
+            "MPa",
+            "thin-wall equilibrium",
         ),
         *two_points.k_steps(
             x,
@@ -73,7 +89,7 @@ KIND = Kind(
     sizes_of=lambda x, body: (x[0], 2.0 * x[1]),
     stress_intensity=_k,
     reference_stress=_reference,
-    nominal_stress=parts.hoop,
+    nominal_stress=hoop,
     impossible=two_points.deeper_than_wall,
     wall=lambda x, body: np.stack([body["thickness"] - x[0], np.full_like(x[1], np.inf)]),
     inside=lambda x, body: parts.all_hold(_checks(x, body)),
@@ -81,5 +97,5 @@ KIND = Kind(
     relations=(cylinder_inside.VALIDITY, reference_stress.CYLINDER),
     working=_working,
     becomes=lambda x, body: None,
-    leaks_to=lambda x, body: ("cylinder-axial-through", None, float(2.0 * x[1]), body),
+    leaks_to=becomes_through,
 )

@@ -1,44 +1,35 @@
-"""cylinder-axial-through: an axial crack through the wall of a cylinder under pressure."""
+"""cylinder-axial-through: a crack through the wall along a cylinder under pressure, which also
+leaks into the crack and is taken in full on its faces."""
 
 import numpy as np
 
-from assessment.relations import cylinder_through, reference_cylinders
+from assessment.relations import axial_through, reference_cylinders
 from assessment.validity import Floats, Mark
 
 from . import parts
 from .base import Body, Kind, Loads, WorkingStep
-
-
-def _mean_radius(body: Body) -> float:
-    return float(body["inner_radius"] + body["thickness"] / 2.0)
-
-
-def _relative(x: Floats, body: Body) -> Floats:
-    return np.asarray(x[0] / np.sqrt(_mean_radius(body) * body["thickness"]))
-
-
-def _hoop(loads: Loads, body: Body) -> Floats:
-    return np.asarray(parts.load(loads, "pressure") * body["inner_radius"] / body["thickness"])
+from .cylinder_axial_inside import hoop
 
 
 def _k(x: Floats, loads: Loads, body: Body) -> Floats:
-    f = cylinder_through.axial(_relative(x, body))
-    return np.asarray(f * _hoop(loads, body) * np.sqrt(np.pi * x[0]))[None]
-
-
-def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
-    pressure = parts.load(loads, "pressure")
-    return reference_cylinders.axial_through(
-        pressure, x[0], body["thickness"], body["inner_radius"]
+    return axial_through.stress_intensity(
+        x[0], parts.load(loads, "pressure"), body["thickness"], body["inner_radius"]
     )
 
 
+def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
+    return reference_cylinders.axial_through(
+        parts.load(loads, "pressure"), x[0], body["thickness"], body["inner_radius"]
+    )
+
+
+def _values(x: Floats, body: Body) -> dict[str, Floats]:
+    mean = body["inner_radius"] + body["thickness"] / 2.0
+    return axial_through.validity_values(x[0], body["thickness"], mean)
+
+
 def _checks(x: Floats, body: Body) -> parts.Checks:
-    values = {
-        "c/√(Rt)": _relative(x, body),
-        "R/t": np.asarray(_mean_radius(body) / body["thickness"]),
-    }
-    return ((cylinder_through.AXIAL, values),)
+    return ((axial_through.VALIDITY, _values(x, body)),)
 
 
 def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
@@ -46,28 +37,32 @@ def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
 
 
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
-    relative = _relative(x, body)
-    f, hoop = cylinder_through.axial(relative), float(_hoop(loads, body))
-    numbers = f"x = c/√(Rt) = {float(relative):.4g}"
+    along = _values(x, body)["c/√(R t)"]
+    f = axial_through.factor(along)
+    numbers = (
+        f"p = {float(parts.load(loads, 'pressure')):g} MPa, "
+        f"R_i = {parts.millimetres(body['inner_radius'])}, "
+        f"t = {parts.millimetres(body['thickness'])}, c = {parts.millimetres(x[0])}"
+    )
+    source = axial_through.VALIDITY.source
     return (
         parts.step_factor(
             "Geometry factor",
-            "F = √(1 + 0.52 x + 1.29 x² − 0.074 x³)",
-            numbers,
+            "F = √(1 + 0.52x + 1.29x² − 0.074x³), x = c/√(R_m t)",
+            f"x = {float(along):.4g}",
             f,
-            cylinder_through.AXIAL.source,
+            source,
         ),
         parts.step_k(
-            "tip",
-            "K = (p R_i/t) F √(πc)",
-            f"p R_i/t = {hoop:.4g} MPa, F = {float(f):.4g}, c = {parts.millimetres(x[0])}",
+            "tip, mean through the wall",
+            "K = (p R_i/t + p) F √(πc)",
+            f"F = {float(f):.4g}, {numbers}",
             _k(x, loads, body)[0],
-            cylinder_through.AXIAL.source,
+            source,
         ),
         parts.step_reference(
-            "σ_ref = 1.2 M_T p R_i/t, M_T = √(1 + 1.6 c²/(r t))",
-            f"p R_i/t = {hoop:.4g} MPa, c = {parts.millimetres(x[0])}, "
-            f"r = {parts.millimetres(_mean_radius(body))}",
+            "σ_ref = 1.2 M_T (p R_i/t + p), M_T = √(1 + 1.6 c²/(R_m t))",
+            numbers,
             _reference(x, loads, body),
             reference_cylinders.AXIAL_THROUGH.source,
         ),
@@ -76,22 +71,22 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
 
 KIND = Kind(
     name="cylinder-axial-through",
-    words="a crack along a cylinder, through its wall",
+    words="a crack through the wall, along a cylinder",
     body_keys=("inner_radius_mm", "thickness_mm"),
     load_keys=("pressure_mpa",),
     sizes=("length_mm",),
     points=("tip",),
     through=True,
-    front=lambda depth, length, body: parts.one(length) / 2.0,
+    front=lambda depth, length, body: parts.one(None if length is None else length / 2.0),
     sizes_of=lambda x, body: (None, 2.0 * x[0]),
     stress_intensity=_k,
     reference_stress=_reference,
-    nominal_stress=parts.hoop,
+    nominal_stress=hoop,
     impossible=lambda x, body: None,
     wall=lambda x, body: np.full_like(x, np.inf),
     inside=lambda x, body: parts.all_hold(_checks(x, body)),
     marks=_marks,
-    relations=(cylinder_through.AXIAL, reference_cylinders.AXIAL_THROUGH),
+    relations=(axial_through.VALIDITY, reference_cylinders.AXIAL_THROUGH),
     working=_working,
     becomes=lambda x, body: None,
 )

@@ -44,12 +44,6 @@ def nominal(loads: Loads, body: Body) -> float | None:
     return total if total != 0.0 else None
 
 
-def hoop(loads: Loads, body: Body) -> float | None:
-    """p R_i/t, which the geometry factor is divided by; None without pressure."""
-    stress = float(load(loads, "pressure")) * body["inner_radius"] / body["thickness"]
-    return float(stress) if stress != 0.0 else None
-
-
 def longer_than_wide(x: Floats, body: Body) -> str | None:
     """A crack from one edge that leaves nothing of the width."""
     if x[0] >= body["width"]:

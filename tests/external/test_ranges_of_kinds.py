@@ -25,8 +25,20 @@ def by_radius(value):
     return np.array([0.004, 0.01]), CYLINDER | {"inner_radius": 0.02 / value}
 
 
+def around(outside, through=False):
+    """θ/π: of a shallow wall that is thick enough for its radius."""
+    radius = 0.1 + (0.01 if through else 0.02 if outside else 0.0)
+    front = (lambda c: [c]) if through else (lambda c: [0.0165, c])
+    return lambda value: (np.array(front(value * np.pi * radius)), CYLINDER)
+
+
 def by_mean_radius(value):
-    return np.array([0.01]), CYLINDER | {"inner_radius": 0.02 * value - 0.01}
+    """R/t of a wall of 20 mm, the crack being a small part of the way around."""
+    return np.array([0.01]), CYLINDER | {"inner_radius": 0.02 * (value - 0.5)}
+
+
+def folias(value):
+    return np.array([value * np.sqrt(0.11 * 0.02)]), CYLINDER
 
 
 def long_and_shallow(value):
@@ -131,16 +143,6 @@ CRACKS = {
         np.array([0.02]),
         SPECIMEN | {"span": 0.05 * value},
     ),
-    ("cylinder-axial-outside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
-    ("cylinder-axial-outside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
-    ("cylinder-axial-outside", "t/R"): by_radius,
-    ("cylinder-axial-through", "c/√(Rt)"): lambda value: (
-        np.array([value * np.sqrt(0.11 * 0.02)]),
-        CYLINDER,
-    ),
-    ("cylinder-axial-through", "R/t"): by_mean_radius,
-    ("cylinder-girth-through", "θ/π"): lambda value: (np.array([value * np.pi * 0.11]), CYLINDER),
-    ("cylinder-girth-through", "R/t"): by_mean_radius,
     ("cylinder-axial-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
     ("cylinder-axial-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
     ("cylinder-axial-inside", "t/R"): by_radius,
@@ -156,6 +158,21 @@ CRACKS = {
     **{("lug-corner", symbol): crack for symbol, crack in LUG_CORNERS.items()},
     **corners("hole-corner-one"),
     **corners("hole-corner-two"),
+    ("cylinder-axial-outside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
+    ("cylinder-axial-outside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
+    ("cylinder-axial-outside", "t/R"): by_radius,
+    ("cylinder-axial-through", "c/√(R t)"): folias,
+    ("cylinder-axial-through", "R/t"): by_mean_radius,
+    ("cylinder-girth-inside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
+    ("cylinder-girth-inside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
+    ("cylinder-girth-inside", "t/R"): by_radius,
+    ("cylinder-girth-inside", "θ/π"): around(outside=False),
+    ("cylinder-girth-outside", "a/c"): lambda value: (np.array([0.01 * value, 0.01]), CYLINDER),
+    ("cylinder-girth-outside", "a/t"): lambda value: (np.array([0.02 * value, 0.03]), CYLINDER),
+    ("cylinder-girth-outside", "t/R"): by_radius,
+    ("cylinder-girth-outside", "θ/π"): around(outside=True),
+    ("cylinder-girth-through", "θ/π"): around(outside=False, through=True),
+    ("cylinder-girth-through", "R/t"): by_mean_radius,
     ("bar-surface", "a/D"): by_length(0.06, {"diameter": 0.06}),
 }
 BOUNDS = [
