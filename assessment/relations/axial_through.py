@@ -12,8 +12,7 @@ VALIDITY = Validity(
         "Mechanics, table 12.31"
     ),
     accuracy="none stated; measured here against three-dimensional finite elements: 5 to 12 % "
-    "above the mean through the wall (19 % at R/t = 50), and up to 8 % below the largest value in "
-    "the wall",
+    "above the mean through the wall, and up to 8 % below the largest value in the wall",
     ranges=(
         Range(
             "c/√(R t)",

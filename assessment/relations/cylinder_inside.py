@@ -14,10 +14,10 @@ VALIDITY = Validity(
     ),
     accuracy="5 % against the finite elements it was fitted to (stated); measured here: 2 % low to "
     "7 % high for t/R from 0.02 to 0.1, and 5 % low to 10 % high at t/R = 0.5",
+    # Published for t/R from 0.1 to 0.25; on both sides own finite elements bear it out.
     ranges=(
         Range("a/c", "crack depth over half its length", 0.2, 1.0),
         Range("a/t", "crack depth over wall thickness", 0.0, 0.8, True, False),
-        # Published from 0.1 to 0.25; on both sides of it own finite elements bear it out.
         Range("t/R", "wall thickness over inner radius", 0.02, 0.5, basis="confirmed here"),
     ),
     witness=(

@@ -85,7 +85,7 @@ def _revolved(a: float, t: float, radius: float, inside: bool, load: Traction) -
     @BilinearForm
     def stiffness(u, v, w):  # type: ignore[no-untyped-def]
         r = w.x[0]
-        e, g, hoop, other = sym_grad(u), sym_grad(v), u.value[0] / r, v.value[0] / r
+        e, g, hoop, other = sym_grad(u), sym_grad(v), u[0] / r, v[0] / r
         both = LAME * (trace(e) + hoop) * (trace(g) + other)
         return 2 * np.pi * r * (both + 2 * SHEAR * (ddot(e, g) + hoop * other))
 
