@@ -9,7 +9,8 @@ from pathlib import Path
 
 import pytest
 
-BY_THEMSELVES = ("holes", "cylinders")  # these print their bounds line by line and raise where one is broken
+# These print their bounds line by line and raise or exit where one is broken.
+BY_THEMSELVES = ("holes",)
 
 
 def main(arguments: list[str]) -> int:
