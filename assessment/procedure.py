@@ -22,7 +22,7 @@ from assessment.estimate import (
     toughness_of,
 )
 from assessment.interval import Next, Rule, governing, rules
-from assessment.leak import Leak, leak_before_break
+from assessment.leak import THROUGH_NOW, Leak, leak_before_break, leaks_now
 from assessment.lifetime import Critical, LifeFound, critical, life
 from assessment.needs import needs
 from assessment.restriction import ReducedLoad, reduced_load
@@ -101,6 +101,9 @@ def compute(case: Case) -> Found:
     measured = case.crack if case.crack.found else replace(case.crack, sizing=None)
     sizes = corners(measured, case.body, case.criteria.size_confidence_sd or 0.0)
     decides = bounding(look, sizes)
+    if leaks_now(case, decides.corner):
+        ended = LifeFound(cycles=0.0, usage=0.0, ends_by="break-through", path=())
+        decides = replace(decides, acceptable=False, life=ended)
     lacks = _lacks(case, bounding_needs)
 
     def days_of(one: Bounding) -> int | None:
@@ -135,7 +138,9 @@ def compute(case: Case) -> Found:
         next=governing(case, in_force),
         reduced=reduced,
         decision=decision,
-        stop=stop_sizes(case, look, lacks, bool(decides.outside)),
+        stop=StopSizes(why_not=THROUGH_NOW)
+        if leaks_now(case, decides.corner)
+        else stop_sizes(case, look, lacks, bool(decides.outside)),
         marks=(*best.marks, *toughness.marks),
         leak=leak_before_break(case, look, decides.corner, decides.life),
     )
@@ -232,7 +237,9 @@ def _decide(
     return decide_crack(
         CrackFacts(
             acceptable=decides.acceptable,
-            why_not_acceptable=_why_not_acceptable(decides),
+            why_not_acceptable=THROUGH_NOW
+            if leaks_now(case, decides.corner)
+            else _why_not_acceptable(decides),
             needs=row_two,
             grew_faster_before=case.previous is not None and case.previous.grew_faster,
             reserve=decides.reserve,

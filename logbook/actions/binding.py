@@ -59,7 +59,7 @@ class Binding:
     """The claim that binds, and the earliest date and counter of all that bind with it.
 
     signed : the signature alone says it, dates included; proposed : nothing binds, this is only
-    proposed
+    proposed; restriction : one that stays as a condition under a stricter verdict
     """
 
     claim: Claim
@@ -67,6 +67,15 @@ class Binding:
     due_at: Decimal | None
     signed: bool
     proposed: bool = False
+    restriction: Claim | None = None
+
+    @property
+    def limit(self) -> str:
+        return self.claim.limit if self.restriction is None else self.restriction.limit
+
+    @property
+    def held(self) -> bool:
+        return self.claim.held or (self.restriction is not None and self.restriction.held)
 
 
 def claim_of(a: Assessment, *, counter_counts: bool = True) -> Claim:
@@ -112,7 +121,11 @@ def fold(signed: Claim | None, since: Sequence[Claim]) -> Binding | None:
         signed.until_on,
         signed.until_at,
     )
-    return Binding(strictest, due_on, due_at, own)
+    restricting = [one for one in binding if one.verdict == Verdict.RESTRICT]
+    under = max(restricting, key=lambda one: one.rank, default=None)
+    return Binding(
+        strictest, due_on, due_at, own, restriction=None if under is strictest else under
+    )
 
 
 def _only_proposed(newest_first: Sequence[Claim]) -> Binding | None:

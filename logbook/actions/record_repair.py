@@ -133,9 +133,11 @@ def _check(
     wrong: dict[str, list[str]] = {}
     last = standing.last_counter(location.component)
     if last is not None and counter < last and done_on >= _last_day(location.component):
-        wrong["counter"] = [
-            f"The counter stood at {last.normalize():f} at the last look; it cannot run back."
-        ]
+        back = (
+            f"The counter stood at {last.normalize():f} at the last look and cannot run back. "
+            "If it was replaced, log a look that says so first."
+        )
+        wrong["counter"] = [back]
     if done_on < _last_day(location.component) - LONGEST_LATE:
         wrong["done_on"] = ["This day lies long before the last look. Check the year."]
     if sort != Repair.Sort.REPAIR and not closes:

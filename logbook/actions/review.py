@@ -118,11 +118,11 @@ def _overridden(
     if until_on is not None and until_on < clock.today(a.location.component.site.time_zone):
         wrong["until_on"] = ["This day has passed."]
     rule_on, rule_at = _rule_one(a)
-    if stays and rule_on is not None and until_on is not None and until_on > rule_on:
+    if rule_on is not None and until_on is not None and until_on > rule_on:
         wrong["until_on"] = [f"The crack's life allows {rule_on:%-d %b %Y} at the latest."]
     if stays and until_at is None:
         until_at = a.until_at  # a counter that is left out is not thereby lifted
-    if stays and rule_at is not None and until_at is not None and until_at > rule_at:
+    if rule_at is not None and until_at is not None and until_at > rule_at:
         wrong["until_at"] = [f"The crack's life allows {rule_at:f} at the latest."]
     longest = _longest(a)
     if until_on is not None and longest is not None and until_on > longest:

@@ -233,14 +233,14 @@ def _written(binds: Binding, newest: Assessment, site_pk: int) -> _What:
         allowed = Site.objects.get(pk=site_pk).unsigned_may_be_acted_on is True
         state, held = State.PROPOSED, not allowed
     else:
-        state, held = State.IN_FORCE if binds.signed else State.BINDING, claim.held
+        state, held = State.IN_FORCE if binds.signed else State.BINDING, binds.held
     return _What(
         state,
         claim.verdict,
         held,
         binds.due_on,
         binds.due_at,
-        claim.limit,
+        binds.limit,
         assessment=newest,
         disposition=claim.disposition or latest_disposition(newest.location, newest.crack),
     )

@@ -27,14 +27,13 @@ from logbook.models import (
     What,
 )
 
-# A crack whose depth nobody knows is taken to go through, in the kind that says so.
+# A crack whose depth nobody knows is taken to go through, in the kind that says so. Not so at a
+# pressure boundary, where going through is an end of its own: there the depth is asked for.
 THROUGH_OF = {
     "plate-surface": "plate-through-centre",
     "hole-corner-one": "hole-through-one",
     "hole-corner-two": "hole-through-two",
     "lug-corner": "lug-through",
-    "cylinder-axial-inside": "cylinder-axial-through",
-    "cylinder-axial-outside": "cylinder-axial-through",
 }
 
 

@@ -41,7 +41,8 @@ def newest_work(location: Location) -> Repair | None:
 
 def looked_since(work: Repair) -> bool:
     """Somebody looked at the place after the work, by the day and by the book."""
-    return work.location.findings.filter(
+    looks = work.location.findings.exclude(what=What.COULD_NOT_LOOK)
+    return looks.filter(
         leaf__index__gt=work.leaf.index,
         inspection__found_on__gte=work.done_on,
         strike_out__isnull=True,

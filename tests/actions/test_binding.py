@@ -1,6 +1,7 @@
 """Nothing strict is forgotten: what binds is folded from a signature and every proposal since."""
 
 import datetime
+from dataclasses import replace
 from decimal import Decimal
 from typing import Any
 
@@ -57,6 +58,16 @@ def test_the_lower_limit_binds_and_the_higher_does_not() -> None:
     assert lower.claim.factor == 0.78 and lower.claim.held
     own_words = claim("restrict", 100, None, confirmed=True)
     assert folded(own_words, claim("restrict", 100, 0.9)).claim.factor == 0.9
+
+
+def test_a_restriction_stays_as_a_condition_under_a_stricter_verdict() -> None:
+    signed = Claim(
+        "restrict", DAY, None, "84 % of the largest load", 0.84, Assessment(), confirmed=True
+    )
+    found = folded(signed, claim("repair", 50))
+    assert (found.claim.verdict, found.limit, found.held) == ("repair", signed.limit, False)
+    unconfirmed = folded(replace(signed, confirmed=False), claim("repair", 50))
+    assert unconfirmed.held
 
 
 def test_the_earliest_date_binds_whatever_came_after() -> None:

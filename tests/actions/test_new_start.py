@@ -107,6 +107,10 @@ def test_what_was_signed_before_a_repair_is_not_revived_by_it(deciding: Deciding
         None, "refer", True, "proposed-binding",
     )  # fmt: skip
     assert row.assessment is not None and "log the inspection after it" in row.assessment.reasons
+    # Who could not look has not looked.
+    book.log(today, 1150, {"location": book.heel.pk, "what": "could-not-look", "why": "water"})
+    newest = Assessment.objects.order_by("-leaf__index")[0]
+    assert "log the inspection after it" in newest.reasons
     # The inspection after it, as any other, is what the place stands on from now on.
     book.log(today, 1200, {"location": book.heel.pk, "what": "nothing"})
     newest = Assessment.objects.order_by("-leaf__index")[0]

@@ -2,6 +2,8 @@
 
 from typing import Any
 
+import pytest
+
 from assessment import assess
 from tests.assessment.examples import surface
 
@@ -32,3 +34,41 @@ def test_leak_before_break_is_said_only_where_a_leak_is_tolerated_and_the_crack_
     assert tolerated["next_inspection"] == plain["next_inspection"]
     much = assess(vessel(owner={"leak_tolerated": True}, criteria__load_reserve=50.0))
     assert much["leak"] is None or much["leak"]["leak_before_break"] is False
+
+
+@pytest.mark.parametrize(
+    ("kind", "peak"),
+    [
+        ("cylinder-axial-through", {"pressure_mpa": 6.0}),
+        ("cylinder-girth-through", {"membrane_mpa": 30.0, "pressure_mpa": 6.0}),
+    ],
+)
+def test_through_a_pressure_boundary_is_withdrawn_unless_a_leak_is_tolerated(
+    kind: str, peak: dict[str, float]
+) -> None:
+    def through(**changes: Any) -> dict[str, Any]:
+        return assess(
+            surface(
+                crack={"kind": kind, "length_mm": 10.0, "sizing": "none: cut piece"},
+                body={"inner_radius_mm": 120.0, "thickness_mm": 12.0},
+                loading__peak=peak,
+                loading__cycles="none: steady",
+                **changes,
+            )
+        )
+
+    leaking = through()
+    assert leaking["disposition"]["verdict"] == "withdraw"
+    assert "no leak is tolerated" in leaking["disposition"]["reasons"][0]
+    assert leaking["stop_size"]["depth_mm"] is None and leaking["stop_size"]["length_mm"] is None
+    assert through(owner={"leak_tolerated": True})["disposition"]["verdict"] != "withdraw"
+
+
+def test_a_girth_crack_without_pressure_is_no_leak() -> None:
+    case = surface(
+        crack={"kind": "cylinder-girth-through", "length_mm": 10.0, "sizing": "none: cut piece"},
+        body={"inner_radius_mm": 120.0, "thickness_mm": 12.0},
+        loading__peak={"membrane_mpa": 60.0},
+        loading__cycles="none: steady",
+    )
+    assert assess(case)["disposition"]["verdict"] != "withdraw"

@@ -42,6 +42,7 @@ from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
 from logbook.actions.standing import latest_assessment, latest_disposition
 from logbook.actions.strike_out import strike_out
+from logbook.actions.two_people import eases, standing_before
 from logbook.cases.text import exact
 from logbook.entry import read_inspection
 from logbook.management.scenario.picture import draw
@@ -289,7 +290,10 @@ class _Loading:
         """Accept and sign, but for what an engineer would not leave at that."""
         if a.verdict == Verdict.REFER:
             return None
-        made = review(self.people["otto"], a.pk, "accept")
+        # Leaving what still binds from an earlier look takes stated grounds.
+        binding = eases(a.verdict, standing_before(a))
+        grounds = "The later look answers what the earlier one had left open." if binding else ""
+        made = review(self.people["otto"], a.pk, "accept", grounds=grounds)
         signed = sign_disposition(
             self.people["petra"],
             made.pk,
