@@ -54,6 +54,7 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
     if loading.temperature is None:
         yield "No metal temperature is given: the toughness is taken to hold at the lowest one."
     yield from _closed_ends(case)
+    yield from _weld_toe(case)
     if case.material.typical:
         yield "Material values are typical ones from a handbook and are not for acceptance."
     if became_through:
@@ -75,6 +76,22 @@ def _closed_ends(case: Case) -> Iterator[str]:
         f"The axial stress of closed ends is not implied: where the ends are closed, {axial:.4g} "
         f"MPa of the membrane stress of {loads['membrane']:g} MPa is due to the pressure."
     )
+
+
+def _weld_toe(case: Case) -> Iterator[str]:
+    """What the magnification at a weld toe is not: a formula for every attachment."""
+    if case.crack.kind.name != "weld-toe-surface":
+        return
+    yield (
+        "The magnification at the weld toe is for attachments on both surfaces. With one on the "
+        "cracked surface alone it is up to 12 % too low in bending, and on the safe side in "
+        "membrane stress."
+    )
+    if case.body["weld_condition"] == "as-welded":
+        yield (
+            "As welded the whole stress range counts: the growth law has to be one for high "
+            "stress ratio (0.5 and above)."
+        )
 
 
 def _of_marks(marks: Sequence[Mark]) -> Iterator[str]:

@@ -131,6 +131,7 @@ def loads_for(corner: Corner, loads: Loads) -> Loads:
     its outer-fibre value, which nowhere along the front is less than what truly acts there.
     """
     names = [key.rpartition("_")[0] for key in corner.kind.load_keys]
+    names.extend(corner.kind.residual_names.values())
     if corner.became:
         # What bent the wall, not what bends the plate in its own plane.
         names = [name for name in names if name != "bending"]

@@ -13,10 +13,22 @@ def needs(case: Case) -> tuple[str, ...]:
     overdue. Ranges and the computation itself are added by the procedure."""
     found = [missing.sentence() for missing in case.missing]
     found.extend(f"The last look fell short: {short}" for short in case.shortfalls)
+    found.extend(_weld_without_residual_stress(case))
     found.extend(_smaller(case))
     found.extend(_longer_than_the_front(case))
     found.extend(_overdue(case))
     return tuple(found)
+
+
+def _weld_without_residual_stress(case: Case) -> Iterator[str]:
+    """A weld that nobody heat treated holds residual stress, whatever the entry says."""
+    as_welded = case.body.get("weld_condition") == "as-welded"
+    if as_welded and case.loading.residual_said is not None and not case.loading.residual:
+        yield (
+            "loading.residual: the weld is as welded and its residual stress is stated as nil "
+            f"({case.loading.residual_said}). Give the stress or its level, or correct the weld "
+            "condition."
+        )
 
 
 def _smaller(case: Case) -> Iterator[str]:

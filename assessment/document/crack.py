@@ -168,6 +168,9 @@ def read_sizing(sizing: Fields) -> Sizing:
     )
 
 
+WELD_CONDITIONS = ("as-welded", "stress-relieved")
+
+
 def read_body(value: Any, kind: Kind) -> Mapping[str, Any]:
     """The body of the part: lengths in m by key without unit, tables as tuples, words as text."""
     body = Fields("body", value, (*kind.body_keys, *kind.optional_body_keys))
@@ -185,6 +188,8 @@ def _body_value(body: Fields, key: str) -> Any:
         return _table(body, key)
     if key == "ends":
         return body.choice(key, ("free", "held"))
+    if key == "weld_condition":
+        return body.choice(key, WELD_CONDITIONS)
     return body.text(key)
 
 

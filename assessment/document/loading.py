@@ -111,6 +111,8 @@ def _for_kind(
 ) -> dict[str, float]:
     """The stresses as the kind takes them: bending that it does not know counts as membrane."""
     names = {load_name(key) for key in kind.load_keys}
+    if kind.residual_names:
+        return {kind.residual_names[name]: value for name, value in given.items() if value}
     if "membrane" not in names:
         why = f"residual stress is not computed for cracks of kind {kind.name!r}."
         missing.append(Missing(fields.where, why))

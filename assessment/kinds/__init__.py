@@ -23,6 +23,7 @@ from .plate_through_edge import KIND as PLATE_THROUGH_EDGE
 from .specimen_compact_tension import KIND as SPECIMEN_COMPACT_TENSION
 from .specimen_edge_bend import KIND as SPECIMEN_EDGE_BEND
 from .tabulated import KIND as TABULATED
+from .weld_toe_surface import KIND as WELD_TOE_SURFACE
 
 KINDS: dict[str, Kind] = {
     kind.name: kind
@@ -42,6 +43,7 @@ KINDS: dict[str, Kind] = {
         CYLINDER_GIRTH_OUTSIDE,
         CYLINDER_GIRTH_THROUGH,
         BAR_SURFACE,
+        WELD_TOE_SURFACE,
         HOLE_CORNER_ONE,
         HOLE_CORNER_TWO,
         LUG_THROUGH,

@@ -18,7 +18,7 @@ body : mapping of body key without unit to float in m (``table`` keys hold tuple
 """
 
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from typing import Any
 
 from assessment.validity import Floats, Mark, Validity
@@ -74,6 +74,8 @@ class Kind:
         a pin load. loads : names of those that are not nil in peak, cycles or residual stress
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
+    residual_names : membrane and bending of residual stress under the load names by which
+        stress_intensity takes them, where they act otherwise than the same of a load
     leaks_to : as ``becomes``, for a pressure boundary: what it is once it leaks. It does not go on
         in service as that; see leak.py
     """
@@ -98,6 +100,7 @@ class Kind:
     becomes: Callable[[Floats, Body], tuple[str, float | None, float, Body] | None]
     placed: Callable[[float | None, float | None, frozenset[str], Body], Body] = _as_it_is
     leaks_to: Callable[[Floats, Body], tuple[str, float | None, float, Body]] | None = None
+    residual_names: Mapping[str, str] = field(default_factory=dict)
     through: bool = False
     optional_body_keys: tuple[str, ...] = ()
     optional_sizes: tuple[str, ...] = ()

@@ -21,7 +21,7 @@ def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
     return reference_stress.surface(membrane, bending, x[0], x[1], body["thickness"], body["width"])
 
 
-def _checks(x: Floats, body: Body) -> parts.Checks:
+def checks(x: Floats, body: Body) -> parts.Checks:
     values = surface_crack.validity_values(x[0], x[1], body["thickness"], body["width"])
     return (
         (surface_crack.VALIDITY, values),
@@ -48,11 +48,22 @@ def _becomes(x: Floats, body: Body) -> tuple[str, float | None, float, Body] | N
 
 
 def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
-    return parts.marks_of(_checks(x, body))
+    return parts.marks_of(checks(x, body))
+
+
+def reference_step(x: Floats, loads: Loads, body: Body) -> WorkingStep:
+    """The line of the working for the reference stress."""
+    membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
+    return parts.step_reference(
+        "σ_ref = [P_b + √(P_b² + 9 P_m² (1 − α)²)] / [3 (1 − α)²], α = (a/t)/(1 + t/c)",
+        f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, a = {parts.millimetres(x[0])}, "
+        f"c = {parts.millimetres(x[1])}, t = {parts.millimetres(body['thickness'])}",
+        _reference(x, loads, body),
+        reference_stress.SURFACE.source,
+    )
 
 
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
-    membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
     return (
         *two_points.k_steps(
             x,
@@ -62,13 +73,7 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
             "K = (σ_m + H σ_b) √(πa/Q) F(a/c, a/t, φ, c/W)",
             surface_crack.VALIDITY.source,
         ),
-        parts.step_reference(
-            "σ_ref = [P_b + √(P_b² + 9 P_m² (1 − α)²)] / [3 (1 − α)²], α = (a/t)/(1 + t/c)",
-            f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, a = {parts.millimetres(x[0])}, "
-            f"c = {parts.millimetres(x[1])}, t = {parts.millimetres(body['thickness'])}",
-            _reference(x, loads, body),
-            reference_stress.SURFACE.source,
-        ),
+        reference_step(x, loads, body),
     )
 
 
@@ -86,7 +91,7 @@ KIND = Kind(
     nominal_stress=parts.nominal,
     impossible=_impossible,
     wall=_wall,
-    inside=lambda x, body: parts.all_hold(_checks(x, body)),
+    inside=lambda x, body: parts.all_hold(checks(x, body)),
     marks=_marks,
     relations=(surface_crack.VALIDITY, reference_stress.SURFACE),
     working=_working,

@@ -107,6 +107,28 @@ LUG_CORNERS = {
 }
 
 
+TOE = PLATE | {"attachment_length": 0.03}
+
+
+def toe_depth(value):
+    """z/B; the wall is thin, so that the surface point lies inside the range."""
+    return np.array([0.02 * value, 0.02]), TOE
+
+
+def toe_long(value):
+    return np.array([0.005, 0.01]), TOE | {"attachment_length": 0.02 * value}
+
+
+def on_toe(crack):
+    """The same front in a plate, along a weld."""
+
+    def crack_of_toe(value):
+        x, body = crack(value)
+        return x, body | {"attachment_length": 1.5 * body["thickness"]}
+
+    return crack_of_toe
+
+
 # kind, symbol: the crack whose symbol has a value. Where one kind uses two relations of one symbol
 # in different bodies, the relation's words stand in front.
 HELD_RELATIONS = [
@@ -175,6 +197,11 @@ CRACKS = {
     ("cylinder-girth-through", "R/t"): by_mean_radius,
     ("bar-surface", "a/D"): by_length(0.06, {"diameter": 0.06}),
 }
+CRACKS |= {
+    ("weld-toe-surface", symbol): on_toe(CRACKS["plate-surface", symbol])
+    for symbol in ("a/c", "a/t", "a/t ÷ 1.25(a/c + 0.6)", "2c/W")
+}
+CRACKS |= {("weld-toe-surface", "z/B"): toe_depth, ("weld-toe-surface", "L/B"): toe_long}
 BOUNDS = [
     (name, relation, bound, side)
     for name, kind in KINDS.items()

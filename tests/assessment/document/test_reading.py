@@ -84,7 +84,7 @@ def test_deeper_than_twelve_levels_is_refused():
         ({"loading__cycles": []}, "loading.cycles"),
         ({"crack": DROP}, "crack"),
         ({"crack__kind": "plate-sideways"}, "crack.kind"),
-        ({"crack__kind": "weld-toe-surface"}, "crack.kind"),
+        ({"crack__kind": "plate-diagonal"}, "crack.kind"),
         ({"crack__length_mm": DROP}, "crack.length_mm"),
         ({"crack__depth_mm": 25}, "crack.depth_mm"),
         ({"crack__length_mm": 201}, "crack.length_mm"),
