@@ -14,6 +14,7 @@ from assessment.document import Case, CaseRefused
 from assessment.document.case import Material
 from assessment.failure import OPTION_1, RHO, Point, assess_point, option_1_curve
 from assessment.growth import CycleBlock, GrowthLaw
+from assessment.kinds import parts
 from assessment.toughness import ToughnessModel, ToughnessResult, toughness
 from assessment.toughness.value import TemperatureMissing
 from assessment.validity import Floats, Mark
@@ -135,10 +136,21 @@ def loads_for(corner: Corner, loads: Loads) -> Loads:
     if corner.became:
         # What bent the wall, not what bends the plate in its own plane.
         names = [name for name in names if name != "bending"]
+    if corner.kind.profile_over is not None and not corner.became:
+        names.extend(name for name in loads if name.startswith(parts.PROFILE))
     if all(name in names for name in loads):
         return loads
-    extra = sum(abs(value) for name, value in loads.items() if name not in names)
+    extra = sum(
+        abs(value) * _most(name, corner) for name, value in loads.items() if name not in names
+    )
     return {name: loads.get(name, 0.0) + (extra if name == "membrane" else 0.0) for name in names}
+
+
+def _most(name: str, corner: Corner) -> float:
+    """The largest stress of a profile in MPa; 1 for a load that is in MPa itself."""
+    if not name.startswith(parts.PROFILE):
+        return 1.0
+    return float(max(abs(stress) for _, stress in corner.body["profiles"][name]))
 
 
 def arrays(loads: Loads) -> dict[str, Floats]:

@@ -13,8 +13,10 @@ from dataclasses import dataclass
 from assessment.bounding import Bounding, bounding
 from assessment.corners import Corner
 from assessment.document.case import Case
+from assessment.document.profile import Profiles
 from assessment.estimate import Look
 from assessment.growth import CycleBlock
+from assessment.kinds.parts import PROFILE
 
 _STEPS = 6
 
@@ -74,12 +76,31 @@ def least_factor(case: Case) -> tuple[float, str]:
     why = "only a part of the load can be reduced" if part is not None else "even at no load"
     if not case.loading.cycles_fall:
         for block in case.loading.cycles:
-            for name, peak in case.loading.peak.items():
-                reached = _largest(block, name)
-                if peak > 0.0 and reached / peak > least:
-                    least = min(1.0, reached / peak)
-                    why = "the cycles reach as high and do not fall with the peak"
+            reached = _reached(case, block)
+            if reached > least:
+                least = min(1.0, reached)
+                why = "the cycles reach as high and do not fall with the peak"
     return least, why
+
+
+def _reached(case: Case, block: CycleBlock) -> float:
+    """The largest part of the peak that one block of cycles reaches, load by load; nil for none."""
+    peak = case.loading.peak
+    if "profiles" in case.body:
+        return _reached_along(case, block)
+    parts_of = (_largest(block, name) / value for name, value in peak.items() if value > 0.0)
+    return max(parts_of, default=0.0)
+
+
+def _reached_along(case: Case, block: CycleBlock) -> float:
+    """The same where a stress profile acts: place by place through the section."""
+    profiles = Profiles(case.crack.kind, case.body, dict(case.body["profiles"]))
+    largest = {name: _largest(block, name) for name in block.ranges}
+    stresses = (
+        (profiles.stress(largest, x), profiles.stress(case.loading.peak, x))
+        for x in profiles.places()
+    )
+    return max((cycle / peak for cycle, peak in stresses if peak > 0.0), default=0.0)
 
 
 def _largest(block: CycleBlock, name: str) -> float:
@@ -91,7 +112,11 @@ def _largest(block: CycleBlock, name: str) -> float:
 
 def _words(case: Case, factor: float) -> str:
     parts = [
-        f"{name} {_down(factor * value)} MPa" for name, value in case.loading.peak.items() if value
+        f"{math.floor(factor * 1000.0) / 10.0:g} % of the stress profile"
+        if name.startswith(PROFILE)
+        else f"{name} {_down(factor * value)} MPa"
+        for name, value in case.loading.peak.items()
+        if value
     ]
     tail = "the cycles fall with it" if case.loading.cycles_fall else "the cycles stay as they are"
     if case.loading.reducible is None:

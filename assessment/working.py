@@ -12,6 +12,7 @@ from assessment.failure import OPTION_1, RHO
 from assessment.growth import GrowthLaw, TwoStage, Walker
 from assessment.interval import LIFE, rate
 from assessment.kinds.base import WorkingStep
+from assessment.kinds.parts import said
 
 if TYPE_CHECKING:
     from assessment.procedure import Found
@@ -70,7 +71,7 @@ def _toughness_ratio(look: Look, one: Estimate) -> Iterator[WorkingStep]:
         formula = "K_r = largest K of the front / K_mat"
         yield WorkingStep("toughness ratio", formula, numbers, point.toughness_ratio, "", source)
         return
-    stresses = ", ".join(f"{name} {value:g} MPa" for name, value in look.residual.items())
+    stresses = said(arrays(look.residual), one.corner.body)
     for name, k in zip(one.corner.kind.points, np.ravel(held), strict=True):
         formula = "K_s: as K, with the residual stress; nil where it presses the crack shut"
         words = f"Residual stress intensity factor, {name}"

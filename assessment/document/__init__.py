@@ -20,6 +20,7 @@ from assessment.document.criteria import (
 from assessment.document.fields import Fields
 from assessment.document.loading import read_loading
 from assessment.document.material import read_material
+from assessment.document.profile import Profiles
 from assessment.document.reading import read_json
 from assessment.document.refusal import CaseRefused
 from assessment.document.usage import read_as_of, read_history, read_previous, read_usage
@@ -58,7 +59,10 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     crack = read_crack(fields.raw("crack"), missing)
     body = read_body(fields.raw("body"), crack.kind)
     material = read_material(fields.raw("material"), missing)
-    loading = read_loading(fields.raw("loading"), crack.kind, material.yield_strength, missing)
+    profiles = Profiles(crack.kind, body)
+    loading = read_loading(fields.raw("loading"), profiles, material.yield_strength, missing)
+    if profiles.by_name:
+        body = {**body, "profiles": profiles.by_name}
     body = crack.kind.placed(crack.depth, crack.length, _named(loading), body)
     _check_possible(crack, body)
     usage = read_usage(value("usage"), missing)

@@ -4,6 +4,7 @@ from typing import Any
 
 from assessment.document.case import Loading, Missing
 from assessment.document.fields import Fields
+from assessment.document.profile import Profiles
 from assessment.document.refusal import CaseRefused
 from assessment.growth import CycleBlock
 from assessment.kinds.base import Kind
@@ -15,16 +16,20 @@ PEAK_SLACK = 1e-9
 _KEYS = ("peak", "residual", "cycles", "temperature_c", "reducible_part", "cycles_fall")
 
 
-def read_loading(value: Any, kind: Kind, yield_strength: float, missing: list[Missing]) -> Loading:
+def read_loading(
+    value: Any, profiles: Profiles, yield_strength: float, missing: list[Missing]
+) -> Loading:
     """The loading section; residual stress or cycles that are not there go to ``missing``.
+
+    profiles : takes up the stress profiles that are given
 
     Two keys are ours: ``reducible_part`` (0 to 1) is the part of the peak load that a limiter can
     take away, ``cycles_fall`` says that the cycles fall in the same proportion as the peak.
     """
     loading = Fields("loading", value, _KEYS)
-    peak = _peak(loading, kind)
-    cycles, cycles_said = _cycles(loading, kind, peak, missing)
-    said, residual = _residual(loading, kind, yield_strength, missing)
+    peak = _peak(loading, profiles)
+    cycles, cycles_said = _cycles(loading, profiles, peak, missing)
+    said, residual = _residual(loading, profiles, yield_strength, missing)
     return Loading(
         peak=peak,
         cycles=cycles,
@@ -48,21 +53,18 @@ def with_word(key: str, word: str) -> str:
     return f"{name}_{word}_{unit}"
 
 
-def _peak(loading: Fields, kind: Kind) -> dict[str, float]:
+def _peak(loading: Fields, profiles: Profiles) -> dict[str, float]:
+    kind = profiles.kind
     peak = Fields(loading.path("peak"), loading.raw("peak"), (*kind.load_keys, "profile"))
-    _refuse_profile(peak)
-    if not any(key in peak for key in kind.load_keys):
+    profile = profiles.read(peak)
+    if not profile and not any(key in peak for key in kind.load_keys):
         raise CaseRefused(peak.where, f"one of {', '.join(kind.load_keys)} is needed.")
-    return {load_name(key): peak.number_or_none(key) or 0.0 for key in kind.load_keys}
-
-
-def _refuse_profile(fields: Fields) -> None:
-    if "profile" in fields:
-        raise fields.refuse("profile", "a stress profile is not computed yet.")
+    named = {load_name(key): peak.number_or_none(key) or 0.0 for key in kind.load_keys}
+    return named | profile
 
 
 def _residual(
-    loading: Fields, kind: Kind, yield_strength: float, missing: list[Missing]
+    loading: Fields, profiles: Profiles, yield_strength: float, missing: list[Missing]
 ) -> tuple[str | None, dict[str, float]]:
     """What is said of it, and its stresses by the kind's own load names."""
     if "residual" not in loading:
@@ -74,11 +76,18 @@ def _residual(
         return said, {}
     keys = ("membrane_mpa", "bending_mpa", "level", "source", "profile")
     fields = Fields(loading.path("residual"), loading.values["residual"], keys)
-    _refuse_profile(fields)
+    kind, profile = profiles.kind, profiles.read(fields)
+    if profile:
+        for key in ("membrane_mpa", "bending_mpa", "level"):
+            if key in fields:
+                raise fields.refuse(key, "give either this or a profile, not both.")
+        return fields.text_or_none("source") or "as given", profile
     if "level" in fields:
         return _level(fields, kind, yield_strength, missing)
     if "membrane_mpa" not in fields and "bending_mpa" not in fields:
-        raise fields.refuse("membrane_mpa", "membrane_mpa, bending_mpa or a level is needed.")
+        raise fields.refuse(
+            "membrane_mpa", "membrane_mpa, bending_mpa, a level or a profile is needed."
+        )
     given = {name: fields.number_or_none(f"{name}_mpa") or 0.0 for name in ("membrane", "bending")}
     source = fields.text_or_none("source")
     return source or "as given", _for_kind(fields, kind, given, missing)
@@ -124,7 +133,7 @@ def _for_kind(
 
 
 def _cycles(
-    loading: Fields, kind: Kind, peak: dict[str, float], missing: list[Missing]
+    loading: Fields, profiles: Profiles, peak: dict[str, float], missing: list[Missing]
 ) -> tuple[tuple[CycleBlock, ...], str | None]:
     if "cycles" not in loading:
         why = 'the cycles are missing; where there are none, write "none: " and why.'
@@ -133,10 +142,11 @@ def _cycles(
     said = loading.says_none("cycles")
     if said is not None:
         return (), said
+    kind = profiles.kind
     keys = [with_word(key, word) for word in ("range", "max") for key in kind.load_keys]
     known = (*keys, "stress_ratio", "per_usage", "profile")
     entries = loading.objects("cycles", known, CYCLE_BINS)
-    blocks = tuple(_block(entry, kind, peak) for entry in entries)
+    blocks = tuple(_block(entry, profiles, peak) for entry in entries)
     if not blocks:
         raise loading.refuse(
             "cycles", 'an empty list: where there are none, write "none: " and why.'
@@ -144,9 +154,10 @@ def _cycles(
     return blocks, None
 
 
-def _block(entry: Fields, kind: Kind, peak: dict[str, float]) -> CycleBlock:
-    _refuse_profile(entry)
+def _block(entry: Fields, profiles: Profiles, peak: dict[str, float]) -> CycleBlock:
+    kind, profile = profiles.kind, profiles.read(entry)
     ranges = {name: r for name, r in _by_load(entry, kind, "range", least=0.0).items() if r}
+    ranges |= profile
     if not ranges:
         keys = ", ".join(with_word(key, "range") for key in kind.load_keys)
         raise CaseRefused(entry.where, f"one of {keys} is needed, above 0.")
@@ -155,10 +166,15 @@ def _block(entry: Fields, kind: Kind, peak: dict[str, float]) -> CycleBlock:
     if (ratio is None) == (not given):
         words = "both are given" if given else "one of them is needed"
         raise entry.refuse("stress_ratio", f"either stress_ratio or the maxima: {words}.")
+    if profile and ratio is None:
+        raise entry.refuse("stress_ratio", "cycles given by a profile need their stress_ratio.")
     maxima = None if ratio is not None else _by_load(entry, kind, "max")
     for name in maxima or ():
         ranges.setdefault(name, 0.0)
-    _check_peak(entry, kind, peak, ranges, ratio, maxima)
+    if profiles.by_name:
+        _check_peak_profile(entry, profiles, peak, ranges, ratio, maxima)
+    else:
+        _check_peak(entry, kind, peak, ranges, ratio, maxima)
     per_usage = entry.number("per_usage", above=0.0)
     return CycleBlock(ranges=ranges, stress_ratio=ratio, maxima=maxima, per_usage=per_usage)
 
@@ -183,4 +199,25 @@ def _check_peak(
             raise entry.refuse(
                 next(with_word(key, "range") for key in kind.load_keys if load_name(key) == name),
                 f"the cycle's maximum of {largest:g} exceeds the peak of {peak[name]:g}.",
+            )
+
+
+def _check_peak_profile(
+    entry: Fields,
+    profiles: Profiles,
+    peak: dict[str, float],
+    ranges: dict[str, float],
+    ratio: float | None,
+    maxima: dict[str, float] | None,
+) -> None:
+    """Where profiles act, the stress at each of their points is what may not exceed the peak."""
+    scale = 1.0 / (1.0 - (ratio or 0.0))
+    largest = maxima or {name: scale * swing for name, swing in ranges.items()}
+    for x in profiles.places():
+        reached, most = profiles.stress(largest, x), profiles.stress(peak, x)
+        if reached > most + PEAK_SLACK * max(abs(reached), abs(most)):
+            raise CaseRefused(
+                entry.where,
+                f"the cycle's maximum of {reached:.6g} MPa at {x * 1e3:.6g} mm exceeds the peak of "
+                f"{most:.6g} MPa there.",
             )

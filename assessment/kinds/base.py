@@ -74,6 +74,8 @@ class Kind:
         a pin load. loads : names of those that are not nil in peak, cycles or residual stress
     becomes : (x, body) -> (kind name, depth_m | None, length_m, body) of the through crack that it
         is assessed as when its depth reaches the wall, or None
+    profile_over : the body length that a stress profile runs over from the cracked surface, where
+        the kind has a weight function; else None
     residual_names : membrane and bending of residual stress under the load names by which
         stress_intensity takes them, where they act otherwise than the same of a load
     leaks_to : as ``becomes``, for a pressure boundary: what it is once it leaks. It does not go on
@@ -100,6 +102,7 @@ class Kind:
     becomes: Callable[[Floats, Body], tuple[str, float | None, float, Body] | None]
     placed: Callable[[float | None, float | None, frozenset[str], Body], Body] = _as_it_is
     leaks_to: Callable[[Floats, Body], tuple[str, float | None, float, Body]] | None = None
+    profile_over: str | None = None
     residual_names: Mapping[str, str] = field(default_factory=dict)
     through: bool = False
     optional_body_keys: tuple[str, ...] = ()

@@ -1,9 +1,11 @@
 """What several kinds share: reading loads, plain fronts, and lines of the working."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 
 import numpy as np
 
+from assessment.relations import weight_function
+from assessment.relations.weight_function import Profile
 from assessment.validity import Floats, Mark, Validity
 
 from .base import Body, Loads, WorkingStep
@@ -14,6 +16,49 @@ Checks = Sequence[tuple[Validity, Mapping[str, Floats]]]
 def load(loads: Loads, name: str) -> Floats:
     """A load in MPa, nil where it is absent: the document's own rule for a kind's loads."""
     return np.asarray(loads.get(name, 0.0), dtype=float)
+
+
+INTEGRAL = "∫₀ᵃ σ(x) m(x, a) dx, m by the universal weight function"
+PROFILE = "profile"
+"""A stress profile is a load named "profile 1" and so on. Its points stand in ``body["profiles"]``
+under that name, and its value says how many times they act, so that K stays linear in the loads."""
+
+
+def profiles(loads: Loads, body: Body) -> Iterator[tuple[Floats, Profile]]:
+    """How many times each stress profile acts, and its points."""
+    for name in loads:
+        if name.startswith(PROFILE):
+            yield load(loads, name), body["profiles"][name]
+
+
+def section(loads: Loads, body: Body, depth: float) -> tuple[Floats, Floats]:
+    """Membrane and bending stress in MPa, with what the profiles bring into the section."""
+    membrane, bending = load(loads, "membrane"), load(loads, "bending")
+    for times, points in profiles(loads, body):
+        force, moment = weight_function.section_stresses(points, depth)
+        membrane, bending = membrane + times * force, bending + times * moment
+    return membrane, bending
+
+
+def said(loads: Loads, body: Body) -> str:
+    """The loads in words, for the working."""
+    words = []
+    for name, value in sorted(loads.items()):
+        if name.startswith(PROFILE):
+            points = body["profiles"][name]
+            first, last = points[0], points[-1]
+            words.append(
+                f"{float(value):g} × {name} ({first[1]:g} MPa at the surface to {last[1]:g} MPa at "
+                f"{millimetres(last[0])}, {len(points)} points)"
+            )
+        else:
+            words.append(f"{name} = {float(value):g} MPa")
+    return ", ".join(words)
+
+
+def with_integral(formula: str, loads: Loads) -> str:
+    """The formula of K, with the weight function's integral where a profile acts."""
+    return f"{formula} + {INTEGRAL}" if any(n.startswith(PROFILE) for n in loads) else formula
 
 
 def one(value: float | None) -> Floats:
@@ -39,7 +84,10 @@ def marks_of(checks: Checks) -> tuple[Mark, ...]:
 
 
 def nominal(loads: Loads, body: Body) -> float | None:
-    """Membrane + bending, which the geometry factor is divided by; None where it is nil."""
+    """Membrane + bending, which the geometry factor is divided by; None where it is nil or where
+    a profile acts too, which no one number stands for."""
+    if any(name.startswith(PROFILE) for name in loads):
+        return None
     total = float(load(loads, "membrane") + load(loads, "bending"))
     return total if total != 0.0 else None
 

@@ -2,7 +2,7 @@
 
 import numpy as np
 
-from assessment.relations import reference_stress, surface_crack
+from assessment.relations import reference_stress, surface_crack, weight_function
 from assessment.validity import Floats, Mark
 
 from . import parts, two_points
@@ -11,21 +11,34 @@ from .base import Body, Kind, Loads, WorkingStep
 
 def _k(x: Floats, loads: Loads, body: Body) -> Floats:
     membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
-    return surface_crack.stress_intensity(
+    k = surface_crack.stress_intensity(
         x[0], x[1], membrane, bending, body["thickness"], body["width"]
     )
+    return with_profiles(k, x, loads, body)
+
+
+def with_profiles(k: Floats, x: Floats, loads: Loads, body: Body) -> Floats:
+    """K with that of the stress profiles. k : shape (2, ...)"""
+    for times, points in parts.profiles(loads, body):
+        more = surface_crack.stress_intensity_of_profile(
+            x[0], x[1], points, body["thickness"], body["width"]
+        )
+        k = np.stack([k[point] + times * more[point] for point in (0, 1)])
+    return k
 
 
 def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
-    membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
+    membrane, bending = parts.section(loads, body, body["thickness"])
     return reference_stress.surface(membrane, bending, x[0], x[1], body["thickness"], body["width"])
 
 
 def checks(x: Floats, body: Body) -> parts.Checks:
     values = surface_crack.validity_values(x[0], x[1], body["thickness"], body["width"])
+    profile = {name: values[name] for name in ("a/c", "a/t")}
     return (
         (surface_crack.VALIDITY, values),
         (reference_stress.SURFACE, {"a/t": values["a/t"]}),
+        *(((weight_function.SURFACE, profile),) if "profiles" in body else ()),
     )
 
 
@@ -53,7 +66,7 @@ def _marks(x: Floats, body: Body) -> tuple[Mark, ...]:
 
 def reference_step(x: Floats, loads: Loads, body: Body) -> WorkingStep:
     """The line of the working for the reference stress."""
-    membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
+    membrane, bending = (float(value) for value in parts.section(loads, body, body["thickness"]))
     return parts.step_reference(
         "σ_ref = [P_b + √(P_b² + 9 P_m² (1 − α)²)] / [3 (1 − α)²], α = (a/t)/(1 + t/c)",
         f"P_m = {membrane:g} MPa, P_b = {bending:g} MPa, a = {parts.millimetres(x[0])}, "
@@ -93,7 +106,8 @@ KIND = Kind(
     wall=_wall,
     inside=lambda x, body: parts.all_hold(checks(x, body)),
     marks=_marks,
-    relations=(surface_crack.VALIDITY, reference_stress.SURFACE),
+    relations=(surface_crack.VALIDITY, reference_stress.SURFACE, weight_function.SURFACE),
+    profile_over="thickness",
     working=_working,
     becomes=_becomes,
 )

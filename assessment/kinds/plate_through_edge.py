@@ -7,7 +7,13 @@ shown and marked, so that the case is referred.
 
 import numpy as np
 
-from assessment.relations import edge_crack, edge_held, reference_plates, reference_stress
+from assessment.relations import (
+    edge_crack,
+    edge_held,
+    reference_plates,
+    reference_stress,
+    weight_function,
+)
 from assessment.validity import Floats, Mark
 
 from . import parts
@@ -38,11 +44,14 @@ def _k(x: Floats, loads: Loads, body: Body) -> Floats:
     with np.errstate(invalid="ignore"):
         stress = _tension(relative, body) * parts.load(loads, "membrane")
         stress = stress + edge_crack.bending(relative) * parts.load(loads, "bending")
-        return np.asarray(stress * np.sqrt(np.pi * x[0]))[None]
+        k = stress * np.sqrt(np.pi * x[0])
+        for times, points in parts.profiles(loads, body):
+            k = k + times * edge_crack.stress_intensity_of_profile(x[0], points, body["width"])
+        return np.asarray(k)[None]
 
 
 def _reference(x: Floats, loads: Loads, body: Body) -> Floats:
-    membrane, bending = parts.load(loads, "membrane"), parts.load(loads, "bending")
+    membrane, bending = parts.section(loads, body, body["width"])
     formula = reference_plates.edge_held if _holds(body) else reference_stress.edge
     return formula(membrane, bending, _relative(x, body))
 
@@ -61,6 +70,7 @@ def _checks(x: Floats, body: Body) -> parts.Checks:
         (edge_crack.BENDING, value),
         (reference_stress.EDGE, value),
         (edge_crack.HELD, held),
+        *(((weight_function.EDGE, value),) if "profiles" in body else ()),
     )
 
 
@@ -70,6 +80,8 @@ def _impossible(x: Floats, body: Body) -> str | None:
             f"the crack ({parts.millimetres(x[0])}) is as long as the plate is wide "
             f"({parts.millimetres(body['width'])})."
         )
+    if body["ends"] == "held" and "profiles" in body:
+        return "a stress profile is computed where the ends are free, and these are held."
     if body["ends"] == "free" and "held_length" in body:
         return "a held length goes with ends that are held, and these are free."
     return None
@@ -88,7 +100,7 @@ _HELD_REFERENCE = "σ_ref = 2m + √(4m² + n²), n = P_m/(1 − α), m = (P_b/6
 def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
     relative = _relative(x, body)
     numbers = f"α = a/W = {float(relative):.4g}"
-    membrane, bending = (float(parts.load(loads, n)) for n in ("membrane", "bending"))
+    membrane, bending = (float(value) for value in parts.section(loads, body, body["width"]))
     tension, bend = _tension(relative, body), edge_crack.bending(relative)
     form, said, source = _FREE, numbers, edge_crack.TENSION.source
     reference, reference_source = _FREE_REFERENCE, reference_stress.EDGE.source
@@ -108,9 +120,9 @@ def _working(x: Floats, loads: Loads, body: Body) -> tuple[WorkingStep, ...]:
         ),
         parts.step_k(
             "tip",
-            "K = (F_m σ_m + F_b σ_b) √(πa)",
-            f"F_m = {float(tension):.4g}, F_b = {float(bend):.4g}, σ_m = {membrane:g} MPa, "
-            f"σ_b = {bending:g} MPa, a = {parts.millimetres(x[0])}",
+            parts.with_integral("K = (F_m σ_m + F_b σ_b) √(πa)", loads),
+            f"F_m = {float(tension):.4g}, F_b = {float(bend):.4g}, "
+            f"{parts.said(loads, body)}, a = {parts.millimetres(x[0])}",
             _k(x, loads, body)[0],
             source,
         ),
@@ -148,7 +160,9 @@ KIND = Kind(
         edge_held.VALIDITY,
         reference_stress.EDGE,
         reference_plates.EDGE_HELD,
+        weight_function.EDGE,
     ),
+    profile_over="width",
     working=_working,
     becomes=lambda x, body: None,
 )

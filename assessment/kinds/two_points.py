@@ -44,8 +44,9 @@ def k_steps(
 ) -> tuple[WorkingStep, ...]:
     """A line for each of the two points."""
     values = k(x, loads, body)
-    said = ", ".join(f"{name} = {float(value):g} MPa" for name, value in sorted(loads.items()))
-    numbers = f"a = {parts.millimetres(x[0])}, c = {parts.millimetres(x[1])}, {said}"
+    formula = parts.with_integral(formula, loads)
+    numbers = f"a = {parts.millimetres(x[0])}, c = {parts.millimetres(x[1])}, "
+    numbers += parts.said(loads, body)
     return tuple(
         parts.step_k(word, formula, numbers, value, source)
         for word, value in zip(words, values, strict=True)

@@ -2,12 +2,13 @@
 
 The stress of the loads is the structural stress at the toe, so the weld's own notch is put on top
 by the magnification. Residual stress is taken as it is: it was measured or assumed with the weld
-there (BS 7910, annex M, from memory: secondary stresses are not magnified).
+there (BS 7910, annex M, from memory: secondary stresses are not magnified). So is a stress profile:
+it holds the notch.
 """
 
 import numpy as np
 
-from assessment.relations import reference_stress, surface_crack, weld_toe
+from assessment.relations import reference_stress, surface_crack, weight_function, weld_toe
 from assessment.validity import Floats, Mark
 
 from . import parts, plate_surface, two_points
@@ -37,7 +38,7 @@ def _k(x: Floats, loads: Loads, body: Body) -> Floats:
         )[point]
         for point in range(len(two_points.AT))
     )
-    return np.stack(tuple(at_points))
+    return plate_surface.with_profiles(np.stack(tuple(at_points)), x, loads, body)
 
 
 def _checks(x: Floats, body: Body) -> parts.Checks:
@@ -97,7 +98,13 @@ KIND = Kind(
     wall=plate_surface.KIND.wall,
     inside=lambda x, body: parts.all_hold(_checks(x, body)),
     marks=_marks,
-    relations=(weld_toe.VALIDITY, surface_crack.VALIDITY, reference_stress.SURFACE),
+    relations=(
+        weld_toe.VALIDITY,
+        surface_crack.VALIDITY,
+        reference_stress.SURFACE,
+        weight_function.SURFACE,
+    ),
+    profile_over="thickness",
     working=_working,
     becomes=plate_surface.KIND.becomes,
     residual_names=HELD,

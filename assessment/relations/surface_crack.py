@@ -2,6 +2,7 @@
 
 import numpy as np
 
+from assessment.relations import weight_function
 from assessment.validity import Floats, Range, Validity
 
 VALIDITY = Validity(
@@ -66,6 +67,31 @@ def stress_intensity(
             (membrane + bend_surface * bending) * surface * root,
         ]
     )
+
+
+def stress_intensity_of_profile(
+    a: Floats, c: Floats, profile: weight_function.Profile, thickness: float, width: float
+) -> Floats:
+    """K in MPa√m of a stress through the thickness, at the same two points, shape (2, ...).
+
+    The weight function rests on the equation above: under a stress that falls in a straight line
+    to nil at the deepest point it gives F₁ = F (2 + (H − 1) t/a) / 2, which is what tension and
+    bending together say, and stays finite for a shallow crack.
+    """
+    a, c = np.asarray(a, dtype=float), np.asarray(c, dtype=float)
+    *factors, root = _boundary(a, c, thickness, width)
+    depth = a / thickness
+    with np.errstate(divide="ignore", invalid="ignore"):
+        per_root = root / np.sqrt(np.pi * a)
+        uniform = [factor * per_root for factor in factors]
+        slopes = [(bend - 1.0) / depth for bend in _bending_factors(a / c, depth)]
+        linear = [one * (2.0 + slope) / 2.0 for one, slope in zip(uniform, slopes, strict=True)]
+        return np.stack(
+            [
+                weight_function.deepest(a, uniform[0], linear[0], profile),
+                weight_function.surface(a, uniform[1], linear[1], profile),
+            ]
+        )
 
 
 def _boundary(

@@ -201,6 +201,17 @@ CRACKS |= {
     ("weld-toe-surface", symbol): on_toe(CRACKS["plate-surface", symbol])
     for symbol in ("a/c", "a/t", "a/t ÷ 1.25(a/c + 0.6)", "2c/W")
 }
+# What the weight functions are confirmed for counts where a profile acts.
+EDGE_PROFILE = next(
+    r.relation for r in KINDS["plate-through-edge"].relations if "any" in r.relation
+)
+SURFACE_PROFILE = next(r.relation for r in KINDS["plate-surface"].relations if "any" in r.relation)
+BY_PROFILE = TOE | {"profiles": {}}
+CRACKS |= {
+    (EDGE_PROFILE, "a/W"): by_length(0.4, EDGE | {"profiles": {}}),
+    (SURFACE_PROFILE, "a/c"): lambda value: (np.array([0.008 * value, 0.008]), BY_PROFILE),
+    (SURFACE_PROFILE, "a/t"): lambda value: (np.array([0.02 * value, 0.03]), BY_PROFILE),
+}
 CRACKS |= {("weld-toe-surface", "z/B"): toe_depth, ("weld-toe-surface", "L/B"): toe_long}
 BOUNDS = [
     (name, relation, bound, side)
