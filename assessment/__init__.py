@@ -7,6 +7,7 @@ read_case(document) -> Case     the same checks, nothing computed
 outcome_text(outcome) -> str    the outcome's one exact text
 CaseRefused                     ``where`` is the key, ``why`` the sentence
 ENGINE                          name and version that every outcome carries
+chapters() -> tuple             every relation computed with: range, source, accuracy, witness
 KINDS                           the crack kinds computed here, by their plain names (each a Kind)
 """
 
@@ -14,6 +15,18 @@ from assessment.document import Case, CaseRefused, read_case
 from assessment.document.writing import outcome_text
 from assessment.engine import ENGINE
 from assessment.kinds import KINDS, Kind
+from assessment.methods import Chapter, chapters
 from assessment.procedure import assess
 
-__all__ = ["ENGINE", "KINDS", "Case", "CaseRefused", "Kind", "assess", "outcome_text", "read_case"]
+__all__ = [
+    "ENGINE",
+    "KINDS",
+    "Case",
+    "CaseRefused",
+    "Chapter",
+    "Kind",
+    "assess",
+    "chapters",
+    "outcome_text",
+    "read_case",
+]

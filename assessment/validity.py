@@ -30,6 +30,19 @@ class Range:
     basis: str = "published"
     """What the bound rests on: "published", or "confirmed here" by an own computation."""
 
+    def words(self) -> str:
+        """The bound in words, with what it rests on."""
+        if not self.stated:
+            return f"{self.meaning}: none stated"
+        return f"{self.meaning}: {self.symbols()} ({self.basis})"
+
+    def symbols(self) -> str:
+        """The bound as an inequality with its unit."""
+        low = "" if self.low is None else f"{self.low:g} {'<' if self.low_open else '≤'} "
+        high = "" if self.high is None else f" {'<' if self.high_open else '≤'} {self.high:g}"
+        unit = f" {self.unit}" if self.unit else ""
+        return f"{low}{self.symbol}{high}{unit}"
+
     def holds(self, value: Floats | float) -> NDArray[np.bool_]:
         """True where the value lies inside; NaN lies outside."""
         v = np.asarray(value, dtype=float)
@@ -52,6 +65,8 @@ class Validity:
     witness: str = ""
     """How the coefficients were confirmed here: read in the source, or recalled and confirmed by
     which independent computation."""
+    tests: tuple[str, ...] = ()
+    """The tests that hold it to its witness, as pytest names them: a file, or a file::test."""
 
     def holds(self, values: Mapping[str, Floats | float]) -> NDArray[np.bool_]:
         """True where every range holds. ``values`` maps each symbol to its value."""
@@ -81,10 +96,8 @@ class Mark:
     def sentence(self) -> str:
         """The mark in words, for outcome, page and record."""
         r = self.range
-        low = "" if r.low is None else f"{r.low:g} {'<' if r.low_open else '≤'} "
-        high = "" if r.high is None else f" {'<' if r.high_open else '≤'} {r.high:g}"
         unit = f" {r.unit}" if r.unit else ""
         return (
             f"{r.meaning} ({r.symbol}) is {self.value:.4g}{unit}; {self.relation} is {r.basis} for "
-            f"{low}{r.symbol}{high}{unit}. An engineer decides."
+            f"{r.symbols()}. An engineer decides."
         )

@@ -33,6 +33,10 @@ OPTION_1 = Validity(
         "formula from memory; values for two steels agree with the check values (from memory, "
         "high confidence); μ, N and the cut-off recomputed"
     ),
+    tests=(
+        "tests/external/test_failure_diagram.py",
+        "tests/assessment/failure/test_diagram.py",
+    ),
 )
 
 

@@ -15,6 +15,7 @@ RHO = Validity(
         "from memory; no value from outside: its limits (nil without load or without residual "
         "stress, nil from L_r = 1.05 on, steady at L_r = 0.8 and 1.05) are tested"
     ),
+    tests=("tests/assessment/failure/test_residual.py",),
 )
 FULL_BELOW, NIL_FROM = 0.8, 1.05
 

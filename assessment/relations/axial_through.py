@@ -26,6 +26,10 @@ VALIDITY = Validity(
     ),
     witness="formula read; confirmed by an independent three-dimensional computation for c/√(R t) "
     "from 0.25 to 5 and R/t from 5 to 50; the bound on c/√(R t) is that computation's",
+    tests=(
+        "tests/external/test_cylinders.py::test_axial_through_formula",
+        "tests/external/fem/test_cylinders.py::test_an_axial_through_crack",
+    ),
 )
 
 

@@ -17,6 +17,7 @@ VALIDITY = Validity(
         "agree with the check values from memory; the shallow limit 0.66 lies in the band 0.66 to "
         "0.73 of a half circle"
     ),
+    tests=("tests/external/test_stress_intensity_values.py",),
 )
 FRONT = Validity(
     relation="the crack front that is assumed in a round bar",
@@ -24,6 +25,9 @@ FRONT = Validity(
     accuracy="none stated",
     ranges=(Range("2c given", "the crack is longer than the assumed front", None, None),),
     witness="geometry",
+    tests=(
+        "tests/external/test_limiting_cases.py::test_the_assumed_front_of_a_bar_meets_its_surface_at_right_angles",
+    ),
 )
 
 

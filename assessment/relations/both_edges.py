@@ -14,6 +14,10 @@ VALIDITY = Validity(
     accuracy="0.5 % at any depth (stated); measured here: −0.8 % near 2a/W = 0.6, +0.6 % near 0.2",
     ranges=(Range("2a/W", "the two crack lengths over plate width", 0.0, 1.0, True, True),),
     witness="read; confirmed by an independent computation and by finite elements",
+    tests=(
+        "tests/external/fem/test_plane_plates.py::test_cracks_at_both_edges",
+        "tests/external/test_plate_kinds.py::test_both_edges",
+    ),
 )
 
 

@@ -13,6 +13,11 @@ VALIDITY = Validity(
     accuracy="0.1 % at any width (stated; confirmed: worst 0.11 % at 2a/W = 0.9)",
     ranges=(Range("2a/W", "crack length over plate width", 0.0, 1.0, True, True),),
     witness="from memory; confirmed by an independent computation and by finite elements",
+    tests=(
+        "tests/external/fem/test_plane.py::test_centre_crack_in_tension",
+        "tests/external/test_stress_intensity_values.py",
+        "tests/external/test_limiting_cases.py::test_a_centre_crack_in_a_wide_plate_has_factor_one",
+    ),
 )
 
 

@@ -25,6 +25,11 @@ VALIDITY = Validity(
         "from memory; confirmed at both ends by an independent three-dimensional computation for "
         "a/c 0.3 to 2, a/t 0.2 to 0.8, c/W 0.05 to 0.4; the printed limit of a quarter circle"
     ),
+    tests=(
+        "tests/external/test_plate_solids.py::test_a_corner_crack",
+        "tests/external/test_plate_kinds.py::test_corner",
+        "tests/external/test_plate_kinds.py::test_a_small_quarter_circle_has_the_printed_factor",
+    ),
 )
 BENDING = Validity(
     relation="stress intensity of a corner crack in a plate in bending",
@@ -40,6 +45,10 @@ BENDING = Validity(
         "from memory; confirmed by the same computation up to c/W = 0.2; at 0.4 it is too low by "
         "up to 20 % of the value in tension at the end along the thickness, so that such a crack "
         "is referred"
+    ),
+    tests=(
+        "tests/external/test_plate_solids.py::test_a_corner_crack",
+        "tests/external/test_plate_solids.py::test_a_wide_corner_crack_in_bending_is_below_the_elements_and_so_referred",
     ),
 )
 

@@ -23,6 +23,11 @@ VALIDITY = Validity(
     witness=(
         "from memory; confirmed by an independent three-dimensional computation (a band of 6 %)"
     ),
+    tests=(
+        "tests/external/test_cylinders.py",
+        "tests/external/fem/test_cylinders.py::test_an_inside_crack_against_another_computation",
+        "tests/external/test_limiting_cases.py::test_a_thin_cylinder_is_a_plate_under_its_hoop_stress",
+    ),
 )
 
 

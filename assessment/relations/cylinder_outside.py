@@ -28,6 +28,10 @@ VALIDITY = Validity(
         Range("t/R", "wall thickness over inner radius", 0.05, 0.25, basis=_HERE),
     ),
     witness="equation from memory; correction: independent computation",
+    tests=(
+        "tests/external/test_cylinders.py",
+        "tests/external/fem/test_cylinders.py",
+    ),
 )
 # Of the deepest and of the surface point: X = 1 + (a/t)²/s [k₁ + k₂s + k₃s² + k₄τ + k₅τs] with
 # s = a/c, τ = t/R, by least squares from 39 fronts.

@@ -28,6 +28,11 @@ TENSION = Validity(
     accuracy="0.5 % at any depth (stated); measured here: 0.7 % high at a/W = 0.05",
     ranges=(Range("a/W", "crack length over plate width", 0.0, 1.0, True, True),),
     witness="from memory; confirmed by an independent computation and by finite elements",
+    tests=(
+        "tests/external/fem/test_plane.py::test_edge_crack_in_tension",
+        "tests/external/test_stress_intensity_values.py",
+        "tests/external/test_limiting_cases.py::test_a_small_edge_crack_has_the_factor_of_a_half_plane",
+    ),
 )
 BENDING = Validity(
     relation="geometry factor of an edge crack in bending",
@@ -38,6 +43,11 @@ BENDING = Validity(
     accuracy="0.6 % (measured here against independent computations, not stated)",
     ranges=(Range("a/W", "crack length over plate width", 0.0, 1.0, True, True),),
     witness="from memory; confirmed by an independent computation and by finite elements",
+    tests=(
+        "tests/external/fem/test_plane.py::test_edge_crack_in_bending",
+        "tests/external/test_stress_intensity_values.py",
+        "tests/external/test_limiting_cases.py::test_a_deep_edge_crack_in_bending_follows_its_ligament",
+    ),
 )
 HELD = Validity(
     relation="an edge crack in a plate whose ends are held, no held length given",
@@ -45,6 +55,9 @@ HELD = Validity(
     accuracy="none stated",
     ranges=(Range("ends", "the ends are held (1) and not free (0)", 0.0, 0.0, stated=False),),
     witness="none",
+    tests=(
+        "tests/external/test_plate_held.py::test_held_without_a_held_length_is_referred_and_with_it_computed",
+    ),
 )
 
 

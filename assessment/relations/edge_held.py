@@ -38,6 +38,10 @@ VALIDITY = Validity(
         Range("L/W", "held length over plate width", 1.5),
     ),
     witness="derivation; confirmed by plane finite elements with evenly moved ends",
+    tests=(
+        "tests/external/fem/test_plane_plates.py::test_an_edge_crack_with_held_ends",
+        "tests/external/test_plate_held.py",
+    ),
 )
 _DEEPEST = 0.98
 

@@ -25,6 +25,10 @@ VALIDITY = Validity(
         "the middle (a/c 0.2 to 2, a/(a + p) 0.25 to 0.8), and by the exact ellipse in an endless "
         "body"
     ),
+    tests=(
+        "tests/external/test_plate_solids.py::test_an_inner_crack",
+        "tests/external/test_plate_kinds.py::test_an_ellipse_in_an_endless_body",
+    ),
 )
 
 

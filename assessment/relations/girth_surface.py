@@ -32,6 +32,11 @@ VALIDITY = Validity(
     witness="the plate's equation from memory; confirmed for cylinders by an independent "
     "three-dimensional computation for a/c of 0.2, 0.4 and 1, a/t up to 0.8 and t/R of 0.05, 0.1 "
     "and 0.2; as t/R goes to nil the cylinder is the plate",
+    tests=(
+        "tests/external/test_cylinders.py::test_surface_cracks_against_the_elements",
+        "tests/external/test_cylinders.py::test_a_girth_crack_in_a_wide_tube_is_one_in_a_plate",
+        "tests/external/fem/test_cylinders.py",
+    ),
 )
 
 

@@ -29,6 +29,10 @@ VALIDITY = Validity(
     witness="tension read, bending from memory; confirmed by an independent three-dimensional "
     "computation for θ/π from 0.05 to 0.5 and R/t of 5, 10 and 20; the bound on θ/π is where that "
     "begins to lie more than 5 % above (13 % at 0.5 and R/t = 5)",
+    tests=(
+        "tests/external/test_cylinders.py::test_girth_through_formula",
+        "tests/external/fem/test_cylinders.py::test_a_girth_through_crack",
+    ),
 )
 
 

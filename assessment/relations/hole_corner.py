@@ -38,6 +38,7 @@ TENSION = Validity(
         "coefficients from memory; values agree with the check values from memory; "
         "three-dimensional finite elements over the range of shapes, depths and holes"
     ),
+    tests=("tests/external/test_holes_corner.py",),
 )
 PIN = Validity(
     relation="stress intensity of a corner crack at a hole with a pin's load",
@@ -53,6 +54,7 @@ PIN = Validity(
     ),
     ranges=(*_RANGES, Range("D/W", "hole diameter over plate width", 0.01, 0.5, False, False)),
     witness="three-dimensional finite elements over the range of shapes, depths and holes",
+    tests=("tests/external/test_holes_corner.py::test_tension_and_pin_by_solid_elements",),
 )
 
 

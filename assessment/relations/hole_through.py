@@ -62,6 +62,7 @@ TENSION = Validity(
         "wide plate: values from memory (NASA TN D-6376) and an independent computation; finite "
         "width: plane finite elements over the whole range"
     ),
+    tests=("tests/external/test_holes_through.py",),
 )
 PIN = Validity(
     relation="stress intensity of a through crack at a hole with a pin's load",
@@ -78,6 +79,10 @@ PIN = Validity(
     ),
     ranges=TENSION.ranges,
     witness="plane finite elements over the range; limit: a pair of forces on a long crack",
+    tests=(
+        "tests/external/test_holes_through.py",
+        "tests/external/test_lugs.py::test_a_long_head_is_a_plate_with_a_pin",
+    ),
 )
 
 

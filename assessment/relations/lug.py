@@ -66,6 +66,7 @@ VALIDITY = Validity(
         "finer meshes, points between those fitted; a long head agrees with the pin's load at a "
         "hole in a plate, which has an integral equation behind it"
     ),
+    tests=("tests/external/test_lugs.py",),
 )
 
 CORNER = Validity(
@@ -90,6 +91,7 @@ CORNER = Validity(
         Range("c/l", "crack length over the ligament beside the bore", 0.0, 0.7, True, False),
     ),
     witness="three-dimensional finite elements of rings as narrow as lugs; no lug itself",
+    tests=("tests/external/test_lugs.py::test_corner_cracks_by_solid_rings",),
 )
 
 

@@ -16,6 +16,9 @@ AXIAL_OUTSIDE = Validity(
     ranges=(Range("a/t", "crack depth over wall thickness", 0.0, 1.0, False, True),),
     witness="from memory (medium confidence); limits: no crack, through the wall as M_T of a "
     "through crack asks, endless length",
+    tests=(
+        "tests/external/test_cylinders.py::test_thin_wall_limit_of_the_axial_outside_reference",
+    ),
 )
 AXIAL_THROUGH = Validity(
     relation="reference stress of an axial through crack in a cylinder",
@@ -28,6 +31,10 @@ AXIAL_THROUGH = Validity(
     ranges=(),
     witness="from memory; limits: no crack, long crack; M_T within 3 % of Folias's own expression "
     "up to c/√(R t) = 4",
+    tests=(
+        "tests/external/test_cylinders.py::test_reference_stress_of_an_axial_through_crack",
+        "tests/external/test_cylinders.py::test_bulging_of_the_reference_stress_is_near_folias",
+    ),
 )
 GIRTH_THROUGH = Validity(
     relation="reference stress of a girth through crack in a cylinder",
@@ -39,6 +46,7 @@ GIRTH_THROUGH = Validity(
     accuracy="a lower bound of the limit load of a thin tube",
     ranges=(Range("θ/π", "half the crack's angle over half a turn", 0.0, 0.5),),
     witness="balance of force and moment, integrated independently",
+    tests=("tests/external/test_cylinders.py::test_the_tube_carries_its_force_and_moment",),
 )
 GIRTH_SURFACE = Validity(
     relation="reference stress of a girth surface crack in a cylinder",
@@ -54,6 +62,10 @@ GIRTH_SURFACE = Validity(
     ),
     witness="balance of force and moment, integrated independently; the standard's formula from "
     "memory, agrees with the check value from memory; limits: no crack, all the way around",
+    tests=(
+        "tests/external/test_cylinders.py::test_reference_stress_of_a_girth_surface_crack",
+        "tests/external/test_cylinders.py::test_the_tube_carries_its_force_and_moment",
+    ),
 )
 
 

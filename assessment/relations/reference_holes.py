@@ -20,6 +20,10 @@ THROUGH = Validity(
     ranges=(Range("a/l", "crack length over the ligament beside the hole", 0.0, 1.0, False, True),),
     witness="derivation; limits: net section without a crack and with two; balance of force and "
     "moment integrated",
+    tests=(
+        "tests/external/test_reference_holes.py::test_one_crack_balances_force_and_moment",
+        "tests/external/test_reference_holes.py::test_two_cracks_leave_the_net_section",
+    ),
 )
 CORNER = Validity(
     relation="reference stress of a corner crack at a hole",
@@ -30,6 +34,9 @@ CORNER = Validity(
     accuracy="below the limit load: the quarter ellipse counts as its rectangle",
     ranges=(Range("a/t", "crack depth over thickness", 0.0, 1.0, False, True),),
     witness="derivation; limits: no crack, through crack",
+    tests=(
+        "tests/external/test_reference_holes.py::test_a_corner_crack_through_the_thickness_is_at_least_the_through_crack",
+    ),
 )
 LUG = Validity(
     relation="reference stress of a cracked lug",
@@ -41,6 +48,9 @@ LUG = Validity(
     "is not looked at",
     ranges=(Range("a/l", "crack length over the ligament beside the bore", 0.0, 1.0, False, True),),
     witness="derivation; limits: net section, shear, bearing",
+    tests=(
+        "tests/external/test_reference_holes.py::test_a_lug_takes_the_worst_of_section_shear_and_bearing",
+    ),
 )
 
 

@@ -14,6 +14,7 @@ BOTH_EDGES = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("2a/W", "the two crack lengths over plate width", 0.0, 1.0, False, True),),
     witness="derivation",
+    tests=("tests/external/test_plate_kinds.py::test_reference_stresses_at_their_ends",),
 )
 EDGE_HELD = Validity(
     relation="reference stress of an edge crack in a plate, ends held from turning",
@@ -25,6 +26,9 @@ EDGE_HELD = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("a/W", "crack length over plate width", 0.0, 1.0, False, True),),
     witness="derivation; limits: net section in tension, no crack in bending 2/3",
+    tests=(
+        "tests/external/test_plate_held.py::test_the_ligament_carries_the_force_without_its_eccentricity",
+    ),
 )
 CORNER = Validity(
     relation="reference stress of a corner crack in a plate",
@@ -40,6 +44,7 @@ CORNER = Validity(
         "from memory for the surface flaw; derivation, an edge crack being the limit; limits: no "
         "crack, long crack"
     ),
+    tests=("tests/external/test_reference_corner.py",),
 )
 EMBEDDED = Validity(
     relation="reference stress of a crack inside a plate",
@@ -47,6 +52,7 @@ EMBEDDED = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("2a/t", "crack height over wall thickness", 0.0, 1.0, False, True),),
     witness="from memory; limits: no crack, long crack midway (net section)",
+    tests=("tests/external/test_plate_kinds.py::test_reference_stresses_at_their_ends",),
 )
 SPECIMEN = Validity(
     relation="reference stress of a specimen's ligament",
@@ -58,6 +64,7 @@ SPECIMEN = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("a/W", "crack length over specimen width", 0.0, 1.0, False, True),),
     witness="derivation",
+    tests=("tests/external/test_plate_kinds.py::test_reference_stresses_at_their_ends",),
 )
 
 

@@ -16,6 +16,7 @@ THROUGH = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("2a/W", "crack length over plate width", 0.0, 1.0, False, True),),
     witness="formula read; for membrane stress it is the net-section stress",
+    tests=("tests/external/test_limiting_cases.py::test_a_centre_crack_leaves_the_net_section",),
 )
 EDGE = Validity(
     relation="reference stress of an edge crack in a plate, ends free to rotate",
@@ -27,6 +28,9 @@ EDGE = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("a/W", "crack length over plate width", 0.0, 1.0, False, True),),
     witness="derivation; limits: no crack, pure bending 2/3, deep crack",
+    tests=(
+        "tests/external/test_limiting_cases.py::test_the_edge_ligament_carries_its_force_and_moment",
+    ),
 )
 SURFACE = Validity(
     relation="reference stress of a surface crack in a plate",
@@ -34,6 +38,10 @@ SURFACE = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("a/t", "crack depth over wall thickness", 0.0, 1.0, False, True),),
     witness="from memory; agrees with the check values from memory; limits: no crack, long crack",
+    tests=(
+        "tests/external/test_stress_intensity_values.py",
+        "tests/external/test_limiting_cases.py::test_a_long_surface_crack_is_a_strip_cut_to_what_is_left",
+    ),
 )
 CYLINDER = Validity(
     relation="reference stress of an axial surface crack in a cylinder",
@@ -41,6 +49,7 @@ CYLINDER = Validity(
     accuracy="a lower bound of the limit load",
     ranges=(Range("a/t", "crack depth over wall thickness", 0.0, 1.0, False, True),),
     witness="from memory (medium confidence); agrees with the check value from memory",
+    tests=("tests/external/test_stress_intensity_values.py",),
 )
 BAR = Validity(
     relation="reference stress of a cracked round bar",
@@ -53,6 +62,9 @@ BAR = Validity(
     "and moment instead of combining them",
     ranges=(Range("a/D", "crack depth over bar diameter", 0.0, 1.0, False, True),),
     witness="derivation; limits: no crack in tension, 3π/16 in bending",
+    tests=(
+        "tests/external/test_limiting_cases.py::test_a_cut_bar_against_its_areas_by_quadrature",
+    ),
 )
 THICKNESS = Validity(
     relation="reference stress by the thickness that is left",
@@ -60,6 +72,7 @@ THICKNESS = Validity(
     accuracy="as the table; the net section neglects what stands beside the crack",
     ranges=(),
     witness="data of the basis",
+    tests=("tests/external/test_ranges.py",),
 )
 
 

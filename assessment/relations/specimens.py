@@ -10,6 +10,7 @@ COMPACT = Validity(
     accuracy="0.5 % for 0.2 ≤ a/W ≤ 1 (stated)",
     ranges=(Range("a/W", "crack length over specimen width", 0.2, 1.0, False, True),),
     witness="read in N. E. Dowling, Mechanical Behavior of Materials, 4th ed. (2013), fig. 8.16",
+    tests=("tests/external/test_plate_kinds.py::test_specimens",),
 )
 BEND = Validity(
     relation="stress intensity of the bend specimen",
@@ -23,6 +24,7 @@ BEND = Validity(
         "read in N. E. Dowling, Mechanical Behavior of Materials, 4th ed. (2013); confirmed by "
         "finite elements"
     ),
+    tests=("tests/external/test_plate_kinds.py::test_specimens",),
 )
 
 

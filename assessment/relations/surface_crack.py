@@ -34,6 +34,11 @@ VALIDITY = Validity(
         "10 % at a/t = 0.8; a/c 0.2 to 2, a/t 0.2 to 0.8, 2c/W 0.2 and 0.48), in bending with "
         "G₂₂ = 0.55 − 0.72 (c/a)^0.75 + 0.14 (c/a)^1.5, and by the printed limit of a half circle"
     ),
+    tests=(
+        "tests/external/test_checks_plate_relations.py",
+        "tests/external/test_plate_solids.py::test_a_surface_crack",
+        "tests/external/test_limiting_cases.py::test_a_small_half_circle_at_depth_is_near_two_over_pi",
+    ),
 )
 
 

@@ -33,6 +33,7 @@ SURFACE = Validity(
         "form from memory; tension and bending come back exactly; linear stress against values "
         "computed independently; square and cube of the depth against three-dimensional elements"
     ),
+    tests=("tests/external/test_weight_function.py",),
 )
 EDGE = Validity(
     relation="stress intensity of an edge crack under any stress along its line",
@@ -45,6 +46,10 @@ EDGE = Validity(
     witness=(
         "form from memory; the half plane under uniform and linear stress; square and cube of the "
         "distance against plane elements"
+    ),
+    tests=(
+        "tests/external/test_weight_function.py::test_edge_cracks_against_plane_elements",
+        "tests/external/test_weight_function.py::test_an_edge_crack_in_a_half_plane",
     ),
 )
 

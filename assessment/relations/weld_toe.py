@@ -27,6 +27,7 @@ VALIDITY = Validity(
         "from memory; twelve values of the published forms (from memory); plane finite elements "
         "over L/B 0.3 to 5 and z/B 0.0015 to 0.8 in membrane stress and bending"
     ),
+    tests=("tests/external/test_weld_toe.py",),
 )
 
 

@@ -18,6 +18,7 @@ ENERGY = Validity(
     accuracy="exact for linear elastic behaviour",
     ranges=(),
     witness="definition of the energy release rate; checked against E and ν by hand",
+    tests=("tests/assessment/toughness/test_toughness.py::test_energy_release_by_hand",),
 )
 
 
