@@ -52,13 +52,14 @@ class Chapter:
 
     @property
     def title(self) -> str:
-        """What the file is about: the first line, up to the colon that starts the details."""
-        return self.about.split("\n")[0].split(":")[0].rstrip(".")
+        """What the file is about: the first sentence."""
+        return " ".join(self.about.split("\n\n")[0].split()).rstrip(".")
 
     @property
     def paragraphs(self) -> tuple[str, ...]:
-        """The text in paragraphs, each on one line."""
-        return tuple(" ".join(part.split()) for part in self.about.split("\n\n"))
+        """The rest in paragraphs. One that is indented keeps its lines: it is a formula."""
+        parts = self.about.split("\n\n")[1:]
+        return tuple(p if p.startswith("    ") else " ".join(p.split()) for p in parts)
 
 
 @cache

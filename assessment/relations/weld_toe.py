@@ -16,7 +16,7 @@ VALIDITY = Validity(
     ),
     accuracy="none stated; measured here by plane elements with flanks of 45°: with attachments on "
     "both surfaces 3 % low to 12 % high; with one on the cracked surface alone 2 to 38 % high in "
-    "membrane stress and up to 12 % LOW in bending",
+    "membrane stress and up to 12 % low in bending",
     ranges=(
         Range(
             "z/B", "height above the toe over wall thickness", 0.0015, 0.8, basis="confirmed here"
