@@ -8,14 +8,15 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
 
 import numpy as np
+from scipy.special import ellipe
 
 from assessment.corners import Corner
 from assessment.document import Case, CaseRefused
-from assessment.document.case import Material
+from assessment.document.case import Crack, Material
 from assessment.failure import OPTION_1, RHO, Point, assess_point, option_1_curve
 from assessment.growth import CycleBlock, GrowthLaw
 from assessment.kinds import parts
-from assessment.toughness import ToughnessModel, ToughnessResult, toughness
+from assessment.toughness import Conditions, ToughnessModel, ToughnessResult, toughness
 from assessment.toughness.value import TemperatureMissing
 from assessment.validity import Floats, Mark
 
@@ -94,13 +95,45 @@ def fracture_for(case: Case) -> str:
 
 
 def toughness_of(model: ToughnessModel, case: Case, where: str) -> ToughnessResult:
-    """Toughness at the case's temperature; refused where a table has none to be read at."""
-    material, temperature = case.material, case.loading.temperature
+    """Toughness under the case's conditions; refused where a model has no temperature."""
     try:
-        return toughness(model, temperature, material.elastic_modulus, material.poisson)
+        found = toughness(model, conditions_of(case))
     except TemperatureMissing:
-        why = f"this is needed by {where}, which is given by temperature, and missing."
+        why = f"this is needed by {where}, which depends on temperature, and missing."
         raise CaseRefused("loading.temperature_c", why) from None
+    if not np.isfinite(found.value):
+        raise CaseRefused(where, "this correlation gives no toughness for this energy and yield.")
+    if case.material.zone is None:
+        return found
+    steps = (replace(s, step=f"{s.step} ({case.material.zone})") for s in found.working)
+    return replace(found, working=tuple(steps))
+
+
+def conditions_of(case: Case) -> Conditions:
+    """What toughness is read at. The front is that of the size measured: its growth is not
+    followed in the toughness."""
+    material, crack, body = case.material, case.crack, case.body
+    return Conditions(
+        temperature=case.loading.temperature,
+        elastic_modulus=material.elastic_modulus,
+        poisson=material.poisson,
+        yield_strength=material.yield_strength,
+        thickness=body.get("thickness", body.get("diameter")),
+        front=None if crack.kind.through else _front_length(crack.kind.name, crack),
+        rate=case.loading.rate,
+    )
+
+
+def _front_length(kind: str, crack: Crack) -> float | None:
+    """Length in m of an elliptical front: a quarter (corner), a half, or the whole (embedded)."""
+    if crack.depth is None or crack.length is None:
+        return None
+    corner, inner = "corner" in kind, "embedded" in kind
+    a = crack.depth / 2.0 if inner else crack.depth
+    c = crack.length if corner else crack.length / 2.0
+    small, large = sorted((a, c))
+    whole = 4.0 * large * float(ellipe(1.0 - (small / large) ** 2))
+    return whole * (0.25 if corner else 1.0 if inner else 0.5)
 
 
 def limit_curve(material: Material) -> list[list[float]]:

@@ -63,7 +63,10 @@ class Bounding:
 
 @dataclass(frozen=True)
 class Material:
-    """Strengths and modulus in MPa; best-estimate toughness and mean growth law."""
+    """Strengths and modulus in MPa; best-estimate toughness and mean growth law.
+
+    zone : "weld", "heat-affected" or "parent", where the toughness was taken; None: not said
+    """
 
     yield_strength: float
     ultimate_strength: float
@@ -74,6 +77,7 @@ class Material:
     growth: GrowthLaw
     bounding: Bounding
     typical: bool
+    zone: str | None = None
 
 
 @dataclass(frozen=True)
@@ -82,6 +86,9 @@ class Loading:
 
     ``residual`` is by load name in MPa, empty where there is none or none is known;
     ``residual_said`` is why there is none, or where the given one comes from.
+
+    ``rate`` is how fast the peak comes: "static", "intermediate" (within about a second) or
+    "impact"; None where nothing is said.
 
     ``reducible`` is the part of each peak load (0 to 1) that a limiter can take away, and
     ``cycles_fall`` says whether the cycles fall in the same proportion.
@@ -95,6 +102,7 @@ class Loading:
     temperature: float | None
     reducible: float | None
     cycles_fall: bool
+    rate: str | None = None
 
 
 @dataclass(frozen=True)

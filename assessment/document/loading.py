@@ -8,12 +8,13 @@ from assessment.document.profile import Profiles
 from assessment.document.refusal import CaseRefused
 from assessment.growth import CycleBlock
 from assessment.kinds.base import Kind
+from assessment.toughness import RATES
 
 CYCLE_BINS = 200
 # A cycle may exceed the peak by what rounding in a decimal document can make of equal numbers.
 PEAK_SLACK = 1e-9
 
-_KEYS = ("peak", "residual", "cycles", "temperature_c", "reducible_part", "cycles_fall")
+_KEYS = ("peak", "residual", "cycles", "temperature_c", "rate", "reducible_part", "cycles_fall")
 
 
 def read_loading(
@@ -37,6 +38,7 @@ def read_loading(
         residual_said=said,
         residual=residual,
         temperature=loading.number_or_none("temperature_c", least=-273.15),
+        rate=loading.choice("rate", RATES) if "rate" in loading else None,
         reducible=loading.number_or_none("reducible_part", above=0.0, most=1.0),
         cycles_fall=loading.flag("cycles_fall", False),
     )

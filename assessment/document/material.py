@@ -7,7 +7,16 @@ from assessment.document.crack import TABLE_POINTS
 from assessment.document.fields import Fields, as_number
 from assessment.document.refusal import CaseRefused
 from assessment.growth import GrowthLaw, Paris, TwoStage, Walker
-from assessment.toughness import ByTemperature, EnergyRelease, Fixed, ToughnessModel
+from assessment.toughness import (
+    CORRELATIONS,
+    ByTemperature,
+    Charpy,
+    EnergyRelease,
+    Fixed,
+    MasterCurve,
+    ToughnessModel,
+    named,
+)
 
 _KEYS = (
     "yield_mpa",
@@ -19,7 +28,9 @@ _KEYS = (
     "growth",
     "bounding",
     "typical",
+    "zone",
 )
+ZONES = ("weld", "heat-affected", "parent")
 _TOUGHNESS_KEYS = {
     "fixed": ("k_mat_mpa_sqrt_m",),
     "by-temperature": ("points",),
@@ -45,6 +56,8 @@ _GROWTH_KEYS = {
 # Exponents of metals lie between about 2 and 10; far above, the decimal has slipped. Common
 # practice, no source.
 LARGEST_EXPONENT = 20.0
+# Of a bounding toughness by the Master Curve. Common practice, no source.
+LARGEST_PROBABILITY = 0.05
 _THRESHOLD = "threshold_mpa_sqrt_m"
 
 
@@ -73,6 +86,7 @@ def read_material(value: Any, missing: list[Missing]) -> Material:
         growth=read_growth(material.path("growth"), material.raw("growth")),
         bounding=_bounding(material, missing),
         typical=typical,
+        zone=material.choice("zone", ZONES) if "zone" in material else None,
     )
 
 
@@ -86,7 +100,11 @@ def _bounding(material: Fields, missing: list[Missing]) -> Bounding:
     toughness: ToughnessModel | None = None
     growth: GrowthLaw | None = None
     try:
-        toughness = read_toughness(fields.path("toughness"), fields.raw("toughness"))
+        toughness = _for_bounding(
+            fields.path("toughness"),
+            read_toughness(fields.path("toughness"), fields.raw("toughness")),
+            missing,
+        )
     except CaseRefused as refused:
         _keep(refused, fields, "toughness", missing)
     try:
@@ -94,6 +112,28 @@ def _bounding(material: Fields, missing: list[Missing]) -> Bounding:
     except CaseRefused as refused:
         _keep(refused, fields, "growth", missing)
     return Bounding(toughness, growth, fields.text_or_none("stands_for"))
+
+
+def _for_bounding(
+    where: str, model: ToughnessModel, missing: list[Missing]
+) -> ToughnessModel | None:
+    """A model that may stand for the low end; a fit through the middle may not."""
+    if isinstance(model, Charpy) and not CORRELATIONS[model.correlation].lower_bound:
+        bounds = ", ".join(n for n, one in CORRELATIONS.items() if one.lower_bound)
+        why = (
+            f"{model.correlation} is a fit through the middle of its data and gives no bounding "
+            f"value. Use a lower bound ({bounds}) or a measured value."
+        )
+        missing.append(Missing(f"{where}.correlation", why))
+        return None
+    if isinstance(model, MasterCurve) and model.probability > LARGEST_PROBABILITY:
+        why = (
+            f"a bounding value is one that few pieces fall below: give a probability of "
+            f"{LARGEST_PROBABILITY:g} or less (common practice)."
+        )
+        missing.append(Missing(f"{where}.probability", why))
+        return None
+    return model
 
 
 def _keep(refused: CaseRefused, fields: Fields, key: str, missing: list[Missing]) -> None:
@@ -108,7 +148,7 @@ class NotComputed(CaseRefused):
 
 
 def read_toughness(where: str, value: Any) -> ToughnessModel:
-    """A toughness model; refused where it is not computed yet."""
+    """A toughness model."""
     name, fields = _model(where, value, "model", _TOUGHNESS_KEYS, ())
     if name == "fixed":
         return Fixed(fields.number("k_mat_mpa_sqrt_m", above=0.0))
@@ -117,7 +157,15 @@ def read_toughness(where: str, value: Any) -> ToughnessModel:
     if name == "energy-release":
         plane = fields.choice("plane", ("stress", "strain"))
         return EnergyRelease(fields.number("g_c_kj_per_m2", above=0.0), plane)
-    raise NotComputed(fields.path("model"), f"toughness by {name!r} is not computed yet.")
+    if name == "master-curve":
+        probability = fields.number("probability", above=0.0, below=1.0)
+        return MasterCurve(fields.number("t0_c", least=-273.15), probability)
+    correlation = named(fields.text("correlation"))
+    if correlation is None:
+        known = ", ".join(CORRELATIONS)
+        raise fields.refuse("correlation", f"no such correlation; known are: {known}.")
+    energy = fields.number("energy_j", above=0.0)
+    return Charpy(energy, fields.number("temperature_c", least=-273.15), correlation.name)
 
 
 def read_growth(where: str, value: Any) -> GrowthLaw:

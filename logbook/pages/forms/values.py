@@ -37,7 +37,9 @@ CRITERIA = (
 HINTS = {
     "yielding": gettext_lazy("continuous or discontinuous"),
     "typical": gettext_lazy("yes: handbook values, never for acceptance; or no"),
-    "toughness.model": gettext_lazy("fixed, by-temperature or energy-release"),
+    "toughness.model": gettext_lazy(
+        "fixed, by-temperature, energy-release, charpy or master-curve"
+    ),
     "growth.law": gettext_lazy("paris, two-stage or walker"),
     "growth.c": gettext_lazy("m/cycle with ΔK in MPa√m"),
     "bounding.stands_for": gettext_lazy("such as: lowest of three tests; mean plus two deviations"),

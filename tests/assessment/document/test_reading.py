@@ -101,7 +101,7 @@ def test_deeper_than_twelve_levels_is_refused():
         ({"material__toughness": DROP}, "material.toughness"),
         (
             {"material__toughness": {"model": "charpy", "energy_j": 40}},
-            "material.toughness.model",
+            "material.toughness.correlation",
         ),
         ({"material__growth": {"law": "forman", "c": 1, "m": 3}}, "material.growth.law"),
         ({"material__growth__c": -1}, "material.growth.c"),

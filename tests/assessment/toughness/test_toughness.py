@@ -4,14 +4,14 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from assessment.toughness import ByTemperature, EnergyRelease, Fixed, toughness
+from assessment.toughness import ByTemperature, Conditions, EnergyRelease, Fixed, toughness
 from assessment.toughness.value import TemperatureMissing
 
 TABLE = ByTemperature(((-40.0, 45.0), (-20.0, 60.0), (20.0, 140.0)))
 
 
 def of(model, temperature=None):
-    return toughness(model, temperature, elastic_modulus=210e3, poisson=0.3)
+    return toughness(model, Conditions(temperature, 210e3, 0.3, 355.0))
 
 
 def test_a_fixed_value_is_that_value_at_any_temperature():
