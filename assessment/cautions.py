@@ -3,6 +3,7 @@
 from collections.abc import Iterator, Sequence
 
 from assessment.document.case import Case
+from assessment.failure.yielding import SMALL_PART, plane_strain_thickness, plastic_zone
 from assessment.leak import Leak
 from assessment.validity import Mark
 
@@ -24,12 +25,35 @@ ALWAYS = (
 
 
 def cautions(
-    case: Case, marks: Sequence[Mark], became_through: bool, leak: Leak | None
+    case: Case,
+    marks: Sequence[Mark],
+    became_through: bool,
+    leak: Leak | None,
+    yielding: Sequence[str] = (),
 ) -> tuple[str, ...]:
     """All cautions, the usual ones first."""
     leaking = () if leak is None else (leak.words,)
     of_case = _of_case(case, became_through)
-    return tuple(dict.fromkeys((*ALWAYS, *of_case, *leaking, *_of_marks(marks))))
+    return tuple(dict.fromkeys((*ALWAYS, *of_case, *yielding, *leaking, *_of_marks(marks))))
+
+
+def of_yielding(case: Case, k: float, toughness: float) -> Iterator[str]:
+    """Plane strain and the plastic zone, for the largest K of the best estimate in MPa√m."""
+    strength, wall = case.material.yield_strength, case.body.get("thickness")
+    needed = plane_strain_thickness(toughness, strength)
+    if wall is not None and wall < needed:
+        yield (
+            f"The wall of {wall * 1e3:.4g} mm is thinner than the {needed * 1e3:.4g} mm that plane "
+            "strain needs at this toughness (ASTM E399): a toughness measured at another thickness "
+            "need not hold here."
+        )
+    size = case.crack.depth or case.crack.length or 0.0
+    zone = plastic_zone(k, strength, "stress") if k > 0.0 else 0.0
+    if size > 0.0 and zone > SMALL_PART * size:
+        yield (
+            f"The metal yields over about {zone * 1e3:.3g} mm ahead of the crack (Irwin, plane "
+            f"stress), more than a tenth of its size: toughness alone would not be enough here."
+        )
 
 
 def _of_case(case: Case, became_through: bool) -> Iterator[str]:

@@ -13,7 +13,7 @@ from scipy.special import ellipe
 from assessment.corners import Corner
 from assessment.document import Case, CaseRefused
 from assessment.document.case import Crack, Material
-from assessment.failure import OPTION_1, RHO, Point, assess_point, option_1_curve
+from assessment.failure import OPTION_1, RHO, Point, assess_point, drawable
 from assessment.growth import CycleBlock, GrowthLaw
 from assessment.kinds import parts
 from assessment.toughness import Conditions, ToughnessModel, ToughnessResult, toughness
@@ -78,12 +78,12 @@ class Estimate:
 
 def has_diagram(material: Material) -> bool:
     """Yielding is known, and the strengths lie where the diagram is published."""
-    return material.yielding is not None and not diagram_marks(material)
+    return drawable(material) and not diagram_marks(material)
 
 
 def diagram_marks(material: Material) -> tuple[Mark, ...]:
     """Where the diagram's range is left; its limit on yield is that of the yield plateau."""
-    if material.yielding != "discontinuous":
+    if material.yielding != "discontinuous" or material.drawn_from is not None:
         return ()
     return OPTION_1.marks({"σ_Y": material.yield_strength})
 
@@ -134,19 +134,6 @@ def _front_length(kind: str, crack: Crack) -> float | None:
     small, large = sorted((a, c))
     whole = 4.0 * large * float(ellipe(1.0 - (small / large) ** 2))
     return whole * (0.25 if corner else 1.0 if inner else 0.5)
-
-
-def limit_curve(material: Material) -> list[list[float]]:
-    """The limit of the diagram for drawing; empty where it cannot be drawn."""
-    if not has_diagram(material):
-        return []
-    points = option_1_curve(
-        material.yield_strength,
-        material.ultimate_strength,
-        material.elastic_modulus,
-        str(material.yielding),
-    )
-    return [list(point) for point in points]
 
 
 def scaled(block: CycleBlock, factor: float) -> CycleBlock:

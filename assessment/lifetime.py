@@ -15,7 +15,7 @@ from assessment.estimate import (
     estimate,
     loads_for,
 )
-from assessment.failure import FULL_BELOW, lr_max, option_1, ratios
+from assessment.failure import FULL_BELOW, limit, lr_max, ratios
 from assessment.growth import CycleBlock, Growth, cycles_per_usage, grow, rates
 from assessment.kinds.base import Kind
 from assessment.validity import Floats
@@ -101,14 +101,9 @@ def _margin_at(look: Look, corner: Corner, x: Floats, factor: Floats | float) ->
         return alone
     if not look.has_diagram:
         return np.minimum(alone, TOUGHNESS_ALONE_BELOW - ratio) if look.decides else alone
-    limit = option_1(
-        lr,
-        material.yield_strength,
-        material.ultimate_strength,
-        material.elastic_modulus,
-        str(material.yielding),
+    drawn = np.where(
+        np.isnan(lr), np.nan, limit(lr, material) - found.toughness_ratio(factor, True)
     )
-    drawn = np.where(np.isnan(lr), np.nan, limit - found.toughness_ratio(factor, True))
     return np.where(ratio < TOUGHNESS_ALONE_BELOW, alone, drawn) if low else drawn
 
 

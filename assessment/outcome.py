@@ -21,11 +21,11 @@ from typing import Any
 
 import numpy as np
 
-from assessment.cautions import cautions
+from assessment.cautions import cautions, of_yielding
 from assessment.document.case import Case
 from assessment.engine import ENGINE
-from assessment.estimate import Estimate, Look, arrays, limit_curve, loads_for
-from assessment.failure import OPTION_1, Point
+from assessment.estimate import Estimate, Look, arrays, loads_for
+from assessment.failure import Point, diagram_of, limit_curve
 from assessment.interval import Next, Rule, rate
 from assessment.leak import Leak
 from assessment.lifetime import Critical, LifeFound, growth_now
@@ -60,10 +60,17 @@ def outcome_of(case: Case, found: Found) -> dict[str, Any]:
             "conditions": list(found.decision.conditions),
             "before_return": found.decision.before_return,
         },
-        "cautions": list(cautions(case, found.marks, found.bounding.corner.became, found.leak)),
+        "cautions": _cautions(case, found),
         "working": working(case, found),
         "figures": _figures(found),
     }
+
+
+def _cautions(case: Case, found: Found) -> list[str]:
+    largest = float(np.nanmax(found.best.k)) if np.any(np.isfinite(found.best.k)) else 0.0
+    yielding = tuple(of_yielding(case, largest, found.best_toughness.value))
+    became = found.bounding.corner.became
+    return list(cautions(case, found.marks, became, found.leak, yielding))
 
 
 def mm(metres: float | None) -> float | None:
@@ -222,13 +229,16 @@ def _size(one: StopSize | None) -> dict[str, Any] | None:
 
 
 def _figures(found: Found) -> dict[str, Any]:
+    look = found.best_look
+    material = look.material
+    drawn = [list(point) for point in limit_curve(material)] if look.has_diagram else []
     points: list[Mapping[str, Any]] = [_point("best estimate", found.best)]
     if found.bounding.estimate is not None:
         points.append(_point("bounding", found.bounding.estimate))
     return {
         "diagram": {
-            "method": OPTION_1.relation,
-            "limit_curve": limit_curve(found.best_look.material),
+            "method": diagram_of(material).relation,
+            "limit_curve": drawn,
             "points": [dict(point) for point in points],
         },
         "growth": {

@@ -8,7 +8,7 @@ import numpy as np
 from assessment.corners import in_mm
 from assessment.document.case import Case
 from assessment.estimate import Estimate, Look, arrays, loads_for
-from assessment.failure import OPTION_1, RHO
+from assessment.failure import RHO, diagram_of
 from assessment.growth import GrowthLaw, TwoStage, Walker
 from assessment.interval import LIFE, rate
 from assessment.kinds.base import WorkingStep
@@ -64,7 +64,7 @@ def _of_estimate(look: Look, one: Estimate) -> Iterator[WorkingStep]:
 
 
 def _toughness_ratio(look: Look, one: Estimate) -> Iterator[WorkingStep]:
-    point, source = one.point, OPTION_1.source
+    point, source = one.point, diagram_of(look.material).source
     held = one.residual_k
     if not look.residual or held is None:
         numbers = f"{float(np.max(one.k)):.6g} / {look.toughness:.6g}"
@@ -91,7 +91,7 @@ def _toughness_ratio(look: Look, one: Estimate) -> Iterator[WorkingStep]:
 
 def _of_point(look: Look, one: Estimate) -> Iterator[WorkingStep]:
     point, material = one.point, look.material
-    source = OPTION_1.source
+    source = diagram_of(material).source
     reference = point.load_ratio * material.yield_strength
     numbers = f"{reference:.6g} / {material.yield_strength:g}"
     yield WorkingStep("load ratio", "L_r = σ_ref / σ_Y", numbers, point.load_ratio, "", source)
@@ -99,7 +99,9 @@ def _of_point(look: Look, one: Estimate) -> Iterator[WorkingStep]:
     if point.limit is not None:
         yield WorkingStep(
             "limit of the diagram at this load ratio",
-            f"f(L_r), Option 1, {material.yielding} yielding",
+            f"f(L_r), Option 1, {material.yielding} yielding"
+            if material.drawn_from is None
+            else "f = [E ε/(L_r σ_Y) + L_r³ σ_Y/(2 E ε)]^(-½), Option 2, ε at L_r σ_Y",
             f"L_r = {point.load_ratio:.6g}, cut-off (σ_Y + σ_U)/(2 σ_Y), σ_U = "
             f"{material.ultimate_strength:g} MPa",
             point.limit,

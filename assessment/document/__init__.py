@@ -4,11 +4,12 @@ reading → text to plain values; fields → keys of one object; crack, material
 criteria → one section each; case → the dataclasses; writing → the outcome's one exact text.
 """
 
+from dataclasses import replace
 from typing import Any
 
 import numpy as np
 
-from assessment.document.case import Case, Crack, Loading, Missing
+from assessment.document.case import Case, Crack, Criteria, Loading, Material, Missing
 from assessment.document.crack import read_body, read_crack
 from assessment.document.criteria import (
     check_uncertainty,
@@ -67,8 +68,7 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     _check_possible(crack, body)
     usage = read_usage(value("usage"), missing)
     criteria = read_criteria(value("criteria"), missing)
-    if criteria.fracture == "diagram" and material.yielding is None:
-        raise CaseRefused("material.yielding", "this is needed for the diagram and missing.")
+    material = _drawn(material, criteria)
     check_uncertainty(value("uncertainty"))
     detection = read_detection(value("detection"))
     if not crack.found and detection is None:
@@ -90,6 +90,18 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
         shortfalls=read_shortfalls(value("look")),
         missing=tuple(missing),
     )
+
+
+def _drawn(material: Material, criteria: Criteria) -> Material:
+    """The material with the curve that its diagram is drawn from."""
+    if criteria.diagram == "option 2":
+        if material.tensile is None:
+            why = "this is needed for the diagram of option 2 and missing."
+            raise CaseRefused("material.tensile_curve", why)
+        return replace(material, drawn_from=material.tensile)
+    if criteria.fracture == "diagram" and material.yielding is None:
+        raise CaseRefused("material.yielding", "this is needed for the diagram and missing.")
+    return material
 
 
 def _named(loading: Loading) -> frozenset[str]:

@@ -8,6 +8,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
+from assessment.failure.tensile import TensileCurve
 from assessment.growth import CycleBlock, GrowthLaw
 from assessment.kinds.base import Kind
 from assessment.toughness import ToughnessModel
@@ -66,6 +67,8 @@ class Material:
     """Strengths and modulus in MPa; best-estimate toughness and mean growth law.
 
     zone : "weld", "heat-affected" or "parent", where the toughness was taken; None: not said
+    tensile : the stress-strain curve, where one is given
+    drawn_from : the same where the diagram is to be drawn from it (Option 2)
     """
 
     yield_strength: float
@@ -78,6 +81,8 @@ class Material:
     bounding: Bounding
     typical: bool
     zone: str | None = None
+    tensile: TensileCurve | None = None
+    drawn_from: TensileCurve | None = None
 
 
 @dataclass(frozen=True)
@@ -128,6 +133,7 @@ class Criteria:
     shortest_interval_days: float | None
     failure_probability: float | None
     surprise: float | None
+    diagram: str | None = None
 
 
 @dataclass(frozen=True)

@@ -15,7 +15,8 @@ _NEEDED = {
     "longest_interval_days": "the longest interval is missing.",
     "shortest_interval_days": "the shortest interval that is still practical is missing.",
 }
-_OPTIONAL = ("failure_probability", "surprise")
+_OPTIONAL = ("failure_probability", "surprise", "diagram")
+DIAGRAMS = ("option 1", "option 2")
 
 
 def read_criteria(value: Any, missing: list[Missing]) -> Criteria:
@@ -40,6 +41,7 @@ def read_criteria(value: Any, missing: list[Missing]) -> Criteria:
         shortest_interval_days=shortest,
         failure_probability=criteria.number_or_none("failure_probability", above=0.0, below=1.0),
         surprise=criteria.number_or_none("surprise", above=0.0, below=1.0),
+        diagram=criteria.choice("diagram", DIAGRAMS) if "diagram" in criteria else None,
     )
 
 

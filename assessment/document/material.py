@@ -6,6 +6,7 @@ from assessment.document.case import Bounding, Material, Missing
 from assessment.document.crack import TABLE_POINTS
 from assessment.document.fields import Fields, as_number
 from assessment.document.refusal import CaseRefused
+from assessment.document.tensile import read_tensile
 from assessment.growth import GrowthLaw, Paris, TwoStage, Walker
 from assessment.toughness import (
     CORRELATIONS,
@@ -29,6 +30,7 @@ _KEYS = (
     "bounding",
     "typical",
     "zone",
+    "tensile_curve",
 )
 ZONES = ("weld", "heat-affected", "parent")
 _TOUGHNESS_KEYS = {
@@ -86,6 +88,7 @@ def read_material(value: Any, missing: list[Missing]) -> Material:
         growth=read_growth(material.path("growth"), material.raw("growth")),
         bounding=_bounding(material, missing),
         typical=typical,
+        tensile=read_tensile(material, strength, ultimate),
         zone=material.choice("zone", ZONES) if "zone" in material else None,
     )
 

@@ -85,14 +85,3 @@ def _plateau(yield_strength: float, elastic_modulus: float) -> float:
     strain = 0.0375 * (1.0 - yield_strength / 1000.0)
     lam = 1.0 + elastic_modulus * strain / yield_strength
     return float((lam + 1.0 / (2.0 * lam)) ** -0.5)
-
-
-def option_1_curve(
-    yield_strength: float, ultimate_strength: float, elastic_modulus: float, yielding: str
-) -> tuple[tuple[float, float], ...]:
-    """Points (L_r, K_r) of the limit for drawing, from L_r = 0 down to K_r = 0 at the cut-off."""
-    end = lr_max(yield_strength, ultimate_strength)
-    lr = np.concatenate([np.linspace(0.0, 0.999999, 60), np.linspace(1.0, end, 40)])
-    f = option_1(lr, yield_strength, ultimate_strength, elastic_modulus, yielding)
-    points = [(float(a), float(b)) for a, b in zip(lr, f, strict=True)]
-    return (*points, (end, 0.0))

@@ -5,7 +5,6 @@ its interaction with yielding adds ρ (interaction.py).
 """
 
 from dataclasses import dataclass
-from typing import Protocol
 
 import numpy as np
 from numpy.typing import NDArray
@@ -13,24 +12,12 @@ from numpy.typing import NDArray
 from assessment.kinds.base import Body, Kind, Loads
 from assessment.validity import Floats
 
-from .diagram import lr_max, option_1
+from .diagram import lr_max
 from .interaction import FULL_BELOW, rho
+from .limit import Strengths, drawable, limit
 
 STEPS = 60
 CAUSES = ("fracture", "collapse")
-
-
-class Strengths(Protocol):
-    """What the criteria need of a material; MPa."""
-
-    @property
-    def yield_strength(self) -> float: ...
-    @property
-    def ultimate_strength(self) -> float: ...
-    @property
-    def elastic_modulus(self) -> float: ...
-    @property
-    def yielding(self) -> str | None: ...
 
 
 @dataclass(frozen=True)
@@ -117,21 +104,21 @@ def assess_point(
     """One crack at one load; see ``reserves`` for the criteria.
 
     x : front variables in m, shape (n,); loads in MPa; toughness in MPa√m
-    fracture : "toughness" or "diagram"; the diagram needs material.yielding
+    fracture : "toughness" or "diagram"; the diagram needs to be drawable
     residual : residual stress by load name, MPa
     """
     found = ratios(kind, x, loads, body, material, toughness, residual or {})
-    lr, drawn = float(found.load_ratio), fracture == "diagram" and material.yielding is not None
+    lr, drawn = float(found.load_ratio), fracture == "diagram" and drawable(material)
     kr = float(found.toughness_ratio(1.0, drawn))
-    limit = float(_limit(lr, material)) if drawn and np.isfinite(lr) else None
+    most = float(limit(lr, material)) if drawn and np.isfinite(lr) else None
     reserve, collapses = _reserve(found, material, fracture)
     value = float(reserve)
     if np.isnan(value):
-        return Point(lr, kr, limit, None, None, None, fracture)
+        return Point(lr, kr, most, None, None, None, fracture)
     if np.isinf(value):
-        return Point(lr, kr, limit, None, True, None, fracture)
+        return Point(lr, kr, most, None, True, None, fracture)
     cause = CAUSES[int(bool(collapses))]
-    return Point(lr, kr, limit, value, value > 1.0, cause, fracture)
+    return Point(lr, kr, most, value, value > 1.0, cause, fracture)
 
 
 def reserves(
@@ -159,16 +146,6 @@ def reserves(
     return _reserve(found, material, fracture)
 
 
-def _limit(lr: Floats | float, material: Strengths) -> Floats:
-    return option_1(
-        lr,
-        material.yield_strength,
-        material.ultimate_strength,
-        material.elastic_modulus,
-        str(material.yielding),
-    )
-
-
 def _reserve(found: Ratios, material: Strengths, fracture: str) -> tuple[Floats, NDArray[np.bool_]]:
     cut_off = lr_max(material.yield_strength, material.ultimate_strength)
     lr, load, held = found.load_ratio, found.load, found.residual
@@ -178,7 +155,7 @@ def _reserve(found: Ratios, material: Strengths, fracture: str) -> tuple[Floats,
         at_points = np.where(load > 0.0, np.maximum(1.0 - held, 0.0) / load, np.inf)
     # Where the residual stress alone breaks the crack, no load is needed.
     by_toughness = np.where(np.any(held >= 1.0, axis=0), 0.0, np.min(at_points, axis=0))
-    if fracture == "toughness" or material.yielding is None:
+    if fracture == "toughness" or not drawable(material):
         # The flow strength is yield × L_r,max, so the cut-off serves both criteria.
         reserve = np.minimum(by_collapse, by_toughness)
         return np.where(unknown, np.nan, reserve), by_collapse < by_toughness
@@ -212,5 +189,5 @@ def _on_the_diagram(found: Ratios, most: Floats, material: Strengths) -> Floats:
 
 
 def _holds(found: Ratios, factor: Floats, material: Strengths) -> NDArray[np.bool_]:
-    limit = _limit(factor * found.load_ratio, material)
-    return np.asarray(found.toughness_ratio(factor, True) < limit)
+    most = limit(factor * found.load_ratio, material)
+    return np.asarray(found.toughness_ratio(factor, True) < most)

@@ -5,6 +5,7 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
+from assessment.failure import TensileCurve
 from assessment.kinds import KINDS
 from assessment.kinds.base import Kind
 
@@ -17,6 +18,7 @@ class Steel:
     ultimate_strength: float = 490.0
     elastic_modulus: float = 207e3
     yielding: str | None = "continuous"
+    drawn_from: TensileCurve | None = None
 
 
 def constant_factor(factor: float, thickness: float = 10.0) -> tuple[Kind, dict]:

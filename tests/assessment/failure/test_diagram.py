@@ -5,7 +5,8 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from assessment.failure import OPTION_1, lr_max, option_1, option_1_curve
+from assessment.failure import OPTION_1, limit_curve, lr_max, option_1
+from tests.assessment.plain import Steel
 
 STEEL = (355.0, 490.0, 207e3)
 BOTH = pytest.mark.parametrize("yielding", ["continuous", "discontinuous"])
@@ -60,7 +61,7 @@ def test_an_unknown_kind_of_yielding_is_misuse():
 
 
 def test_the_drawn_curve_lies_on_the_diagram_and_closes_on_the_axis():
-    curve = np.array(option_1_curve(*STEEL, "discontinuous"))
+    curve = np.array(limit_curve(Steel(yielding="discontinuous")))
     assert curve[:-1, 1] == pytest.approx(option_1(curve[:-1, 0], *STEEL, "discontinuous"))
     assert tuple(curve[-1]) == (lr_max(355.0, 490.0), 0.0)
 

@@ -22,7 +22,7 @@ def loads(membrane: float, bending: float = 0.0) -> dict[str, np.ndarray]:
 
 class Steel:
     yield_strength, ultimate_strength, elastic_modulus = 355.0, 510.0, 207000.0
-    yielding = "continuous"
+    yielding, drawn_from = "continuous", None
 
 
 def reserve(membrane, held, fracture="diagram", toughness=80.0):
