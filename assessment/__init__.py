@@ -8,10 +8,12 @@ outcome_text(outcome) -> str    the outcome's one exact text
 CaseRefused                     ``where`` is the key, ``why`` the sentence
 ENGINE                          name and version that every outcome carries
 chapters() -> tuple             every relation computed with: range, source, accuracy, witness
+tensile_summary(material)       proof stress, ultimate strength and energy of a tensile curve
 KINDS                           the crack kinds computed here, by their plain names (each a Kind)
 """
 
 from assessment.document import Case, CaseRefused, read_case
+from assessment.document.tensile import tensile_summary
 from assessment.document.writing import outcome_text
 from assessment.engine import ENGINE
 from assessment.kinds import KINDS, Kind
@@ -29,4 +31,5 @@ __all__ = [
     "chapters",
     "outcome_text",
     "read_case",
+    "tensile_summary",
 ]

@@ -1,13 +1,11 @@
 """Reads ``tensile_curve``: the stress-strain curve of a tensile test."""
 
+from typing import Any
+
 from assessment.document.crack import TABLE_POINTS
 from assessment.document.fields import Fields, as_number
 from assessment.document.refusal import CaseRefused
-from assessment.failure.tensile import TensileCurve, rising
-
-# The proof stress of the curve and the yield strength beside it may differ by what two test pieces
-# of one metal do. Common practice, no source.
-PROOF_SLACK = 0.15
+from assessment.failure.tensile import Summary, TensileCurve, rising, summary
 
 
 def read_tensile(
@@ -40,3 +38,17 @@ def read_tensile(
             f"strength of {flow:.4g} MPa, the mean of yield and ultimate.",
         )
     return curve
+
+
+def tensile_summary(material: dict[str, Any]) -> Summary | None:
+    """Proof stress, ultimate strength and energy of a material's curve; None where it has none.
+
+    material : the section of the case document. Raises CaseRefused as reading the case does.
+    """
+    if "tensile_curve" not in material:
+        return None
+    fields = Fields("material", material, material)
+    strengths = (fields.number(f"{name}_mpa", above=0.0) for name in ("yield", "ultimate"))
+    curve = read_tensile(fields, *strengths)
+    modulus = fields.number("elastic_modulus_mpa", above=0.0)
+    return None if curve is None else summary(curve, modulus)

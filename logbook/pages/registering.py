@@ -11,6 +11,7 @@ from django.shortcuts import redirect, render
 from django.utils.translation import gettext as _
 from django.views.decorators.http import require_POST
 
+import assessment
 from logbook import access, clock
 from logbook.actions.add_photo import add_photo, declare_photo
 from logbook.actions.grant_role import end_role, grant_role
@@ -367,6 +368,7 @@ def _body_of(before: Material | None) -> dict[str, Any]:
 @login_required
 def material(request: Asked, pk: int) -> HttpResponse:
     one: Material = access.material_for(request.user, pk)
+    body = json.loads(one.body)
     return render(
         request,
         "logbook/material.html",
@@ -376,9 +378,10 @@ def material(request: Asked, pk: int) -> HttpResponse:
             "foot_zone": one.site.time_zone,
             "material": one,
             "may_engineer": may(request, one.site, "engineer"),
+            "tensile": assessment.tensile_summary(body),
             "values": [
                 (line.label.removeprefix("material, "), line.value)
-                for line in case_lines({"material": json.loads(one.body)}, {})
+                for line in case_lines({"material": body}, {})
             ],
         },
     )

@@ -1,11 +1,13 @@
 """Registering on the pages: places, materials, a first basis, a licence renewed, a password."""
 
+from decimal import Decimal
 from typing import Any
 
 import pytest
 from django.urls import reverse
 
 from logbook.actions.register_licence import register_licence
+from logbook.actions.register_material import register_material
 from logbook.models import Basis, Licence, Location, Material
 from tests.pages.book import PASSWORD, STEEL, Book, basis_body
 
@@ -131,3 +133,29 @@ def test_thousands_are_not_taken_for_decimals(book: Book, as_: As, typed: str) -
     with pytest.raises(Unreadable, match="thousands"):
         decimal(typed)
     assert decimal("0,125") == decimal("0.125") and decimal("8,40") == decimal("8.4")
+
+
+def test_a_tensile_curve_is_read_for_strength_and_energy(book: Book, as_: As) -> None:
+    """0.4 + 430 × 0.048 + 460 × 0.05 = 44.04 MJ/m³ by hand."""
+    curve = {
+        "strain": "engineering",
+        "points": [
+            [Decimal("0.002"), 400],
+            [Decimal("0.05"), 460],
+            [Decimal("0.1"), 460],
+        ],
+    }
+    made = register_material(
+        book.people["engineer"],
+        book.site,
+        name="S400",
+        body=STEEL | {"tensile_curve": curve},
+        source="certificate 9 (invented)",
+    )
+    page = as_("engineer").get(reverse("material", args=[made.pk])).content.decode()
+    assert (
+        "44.04" in page and "area below the curve" in page and "Strength is not toughness" in page
+    )
+    plain = Material.objects.exclude(pk=made.pk)[0]
+    page = as_("engineer").get(reverse("material", args=[plain.pk])).content.decode()
+    assert "area below the curve" not in page and "Strength is not toughness" in page
