@@ -88,6 +88,16 @@ CASES = {
     "hole-corner-two": (CORNER, HOLE, {"membrane": 60.0, "pin_load": 10.0}),
     "lug-corner": ({"depth_mm": 3.0, "length_mm": 3.0}, LUG, {"pin_load": 30.0}),
     "lug-through": ({"length_mm": 3.0}, LUG, {"pin_load": 30.0}),
+    "weld-toe-surface": (
+        {"depth_mm": 2.0, "length_mm": 10.0},
+        {
+            "width_mm": 200.0,
+            "thickness_mm": 20.0,
+            "attachment_length_mm": 25.0,
+            "weld_condition": "stress-relieved",
+        },
+        {"membrane": 80.0, "bending": 20.0},
+    ),
     "tabulated": (
         {"depth_mm": 3.0},
         {"thickness_mm": 30.0, "table": [[0, 1.1], [20, 1.6]]},
@@ -97,7 +107,7 @@ CASES = {
 STRETCH = (1.1, 1.5)
 # A through crack's stress is given whatever the thickness, which is then no part of it; a smaller
 # radius lowers the hoop stress; a thinner wall moves an inner crack out of its middle; and a
-# longer span bends more.
+# longer span bends more, as a longer attachment magnifies more.
 WITHOUT_A_BAD_DIRECTION = {
     *((kind, "thickness_mm") for kind in CASES if kind.startswith("plate-through")),
     *((kind, "hole_diameter_mm") for kind in CASES if kind.startswith(("hole", "lug"))),
@@ -105,6 +115,7 @@ WITHOUT_A_BAD_DIRECTION = {
     ("cylinder-girth-through", "thickness_mm"),
     ("plate-embedded", "thickness_mm"),
     ("specimen-edge-bend", "span_mm"),
+    ("weld-toe-surface", "attachment_length_mm"),
 }
 
 
