@@ -1,6 +1,7 @@
 """The working: every number of the outcome as a line an engineer can check with a calculator."""
 
 from collections.abc import Iterable, Iterator
+from dataclasses import fields
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -9,7 +10,7 @@ from assessment.corners import in_mm
 from assessment.document.case import Case
 from assessment.estimate import Estimate, Look, arrays, loads_for
 from assessment.failure import RHO, diagram_of
-from assessment.growth import GrowthLaw, TwoStage, Walker
+from assessment.growth import CLOSURE, Forman, FormanMettu, GrowthLaw, TwoStage, Walker
 from assessment.interval import LIFE, rate
 from assessment.kinds.base import WorkingStep
 from assessment.kinds.parts import said
@@ -148,11 +149,18 @@ def _growth(found: "Found") -> Iterator[WorkingStep]:
             f"{title}: life from the last look",
             "N = ∫ da / (da/dN), all points of the front at once, until the reserve on load is "
             f"{look.reserve:g}",
-            f"{look.growth}; {len(look.cycles)} cycle blocks; {ends}",
+            f"{look.growth.formula}, {_constants(look.growth)}; {len(look.cycles)} cycle blocks; "
+            f"{ends}",
             "none" if one.usage is None else one.usage,
             "usage",
             _source(look.growth),
         )
+
+
+def _constants(law: GrowthLaw) -> str:
+    """The law's constants as they were put in."""
+    given = ((f.name, getattr(law, f.name)) for f in fields(law))  # type: ignore[arg-type]
+    return ", ".join(f"{name} = {value}" for name, value in given if value is not None)
 
 
 def _source(law: GrowthLaw) -> str:
@@ -160,6 +168,10 @@ def _source(law: GrowthLaw) -> str:
         return "BS 7910:2013, 8.2.3"
     if isinstance(law, Walker):
         return "K. Walker, ASTM STP 462 (1970) 1-14"
+    if isinstance(law, Forman):
+        return "R. G. Forman, V. E. Kearney & R. M. Engle, J. Basic Eng. 89 (1967) 459-464"
+    if isinstance(law, FormanMettu):
+        return f"R. G. Forman & S. R. Mettu, ASTM STP 1131 (1992) 519-546; {CLOSURE.source}"
     return "P. C. Paris & F. Erdogan, J. Basic Eng. 85 (1963) 528-533"
 
 

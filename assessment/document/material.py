@@ -7,7 +7,7 @@ from assessment.document.crack import TABLE_POINTS
 from assessment.document.fields import Fields, as_number
 from assessment.document.refusal import CaseRefused
 from assessment.document.tensile import read_tensile
-from assessment.growth import GrowthLaw, Paris, TwoStage, Walker
+from assessment.growth import Forman, FormanMettu, GrowthLaw, Paris, TwoStage, Walker
 from assessment.toughness import (
     CORRELATIONS,
     ByTemperature,
@@ -61,6 +61,7 @@ LARGEST_EXPONENT = 20.0
 # Of a bounding toughness by the Master Curve. Common practice, no source.
 LARGEST_PROBABILITY = 0.05
 _THRESHOLD = "threshold_mpa_sqrt_m"
+_BY_RATIO = "threshold_by_ratio"
 
 
 def read_material(value: Any, missing: list[Missing]) -> Material:
@@ -140,14 +141,10 @@ def _for_bounding(
 
 
 def _keep(refused: CaseRefused, fields: Fields, key: str, missing: list[Missing]) -> None:
-    """A bounding value that is missing or not computed yet is a need; a wrong one is refused."""
-    if key in fields and not isinstance(refused, NotComputed):
+    """A bounding value that is missing is a need; a wrong one is refused."""
+    if key in fields:
         raise refused
     missing.append(Missing(refused.where, refused.why))
-
-
-class NotComputed(CaseRefused):
-    """A model that the document knows and the computation does not cover yet."""
 
 
 def read_toughness(where: str, value: Any) -> ToughnessModel:
@@ -172,9 +169,10 @@ def read_toughness(where: str, value: Any) -> ToughnessModel:
 
 
 def read_growth(where: str, value: Any) -> GrowthLaw:
-    """A growth law; refused where it is not computed yet."""
-    name, fields = _model(where, value, "law", _GROWTH_KEYS, (_THRESHOLD,))
+    """A growth law, with one threshold or a table of it by stress ratio."""
+    name, fields = _model(where, value, "law", _GROWTH_KEYS, (_THRESHOLD, _BY_RATIO))
     threshold = fields.number_or_none(_THRESHOLD, least=0.0) or 0.0
+    by_ratio = _by_ratio(fields)
 
     def above_nil(key: str) -> float:
         return fields.number(key, above=0.0)
@@ -183,17 +181,51 @@ def read_growth(where: str, value: Any) -> GrowthLaw:
         return fields.number(key, above=0.0, most=LARGEST_EXPONENT)
 
     if name == "paris":
-        return Paris(above_nil("c"), exponent("m"), threshold)
+        return Paris(above_nil("c"), exponent("m"), threshold, by_ratio)
     if name == "two-stage":
         c1, c2 = above_nil("c1"), above_nil("c2")
         m1, m2 = exponent("m1"), exponent("m2")
         if m1 == m2:
             raise fields.refuse("m2", "the two lines are parallel and do not cross.")
-        return TwoStage(c1, m1, c2, m2, threshold)
+        return TwoStage(c1, m1, c2, m2, threshold, by_ratio)
     if name == "walker":
         gamma = fields.number("gamma", least=0.0, most=1.0)
-        return Walker(above_nil("c"), exponent("m"), gamma, threshold)
-    raise NotComputed(fields.path("law"), f"growth by {name!r} is not computed yet.")
+        return Walker(above_nil("c"), exponent("m"), gamma, threshold, by_ratio)
+    k_c = fields.number("k_c_mpa_sqrt_m", above=0.0)
+    if threshold >= k_c:
+        raise fields.refuse(_THRESHOLD, "the threshold is not below k_c_mpa_sqrt_m.")
+    if name == "forman":
+        return Forman(above_nil("c"), exponent("m"), k_c, threshold, by_ratio)
+    if by_ratio is not None:
+        raise fields.refuse(_BY_RATIO, "this law takes one threshold, which is part of it.")
+    return FormanMettu(
+        above_nil("c"),
+        exponent("n"),
+        fields.number("p", least=0.0, most=LARGEST_EXPONENT),
+        fields.number("q", least=0.0, most=LARGEST_EXPONENT),
+        k_c,
+        fields.number("constraint_factor", least=1.0, most=3.0),
+        fields.number("peak_over_flow_stress", least=0.0, most=0.8),
+        threshold,
+    )
+
+
+def _by_ratio(fields: Fields) -> tuple[tuple[float, float], ...] | None:
+    """[[stress_ratio, threshold_mpa_sqrt_m], …]; in place of the one threshold."""
+    if _BY_RATIO not in fields:
+        return None
+    if _THRESHOLD in fields:
+        raise fields.refuse(_BY_RATIO, f"give either this or {_THRESHOLD}, not both.")
+    rows: list[tuple[float, float]] = []
+    for where, ratio, value in fields.pairs(_BY_RATIO, as_number, TABLE_POINTS):
+        if ratio >= 1.0 or (rows and ratio <= rows[-1][0]):
+            raise CaseRefused(where, "stress ratios rise from row to row and stay below 1.")
+        if value < 0.0:
+            raise CaseRefused(where, "a threshold is not below 0.")
+        rows.append((ratio, value))
+    if not rows:
+        raise fields.refuse(_BY_RATIO, "a table needs at least one row.")
+    return tuple(rows)
 
 
 def _model(

@@ -1,13 +1,19 @@
 """Fatigue crack growth: laws, cycle blocks, and the run from a size to an end."""
 
+from .closure import CLOSURE, opening
+from .forman import Forman
+from .forman_mettu import FormanMettu
 from .integrate import ENDS, Growth, grow
 from .laws import GrowthLaw, Paris, TwoStage, Walker
 from .loads import CycleBlock, cycles_per_usage
 from .rates import rates
 
 __all__ = [
+    "CLOSURE",
     "ENDS",
     "CycleBlock",
+    "Forman",
+    "FormanMettu",
     "Growth",
     "GrowthLaw",
     "Paris",
@@ -15,5 +21,6 @@ __all__ = [
     "Walker",
     "cycles_per_usage",
     "grow",
+    "opening",
     "rates",
 ]

@@ -25,7 +25,7 @@ from assessment.validity import Floats
 
 from .laws import GrowthLaw
 from .loads import CycleBlock
-from .rates import Drive, drive_of, effective_ranges, k_by_load, rates_from
+from .rates import Drive, drive_of, effective_ranges, grows, k_by_load, rates_from, unstable
 
 Bools = NDArray[np.bool_]
 Margin = Callable[[Floats], Floats]
@@ -92,17 +92,18 @@ class _Problem:
     drive: Drive
     margin: Margin
 
-    def effective(self, x: Floats) -> Floats:
+    def effective(self, x: Floats) -> tuple[Floats, Floats]:
         unit_k = k_by_load(self.kind, x, self.drive.names, self.body)
         return effective_ranges(self.drive, unit_k, self.law)
 
     def growing(self, x: Floats) -> Bools:
-        return np.asarray(self.effective(x) > self.law.threshold)
+        return grows(*self.effective(x), self.law)
 
     def slope(self, y: Floats, growing: Bools) -> Floats:
         """d(x, U)/ds; NaN where nothing grows or K cannot be evaluated."""
         x = y[:-1]
-        r = rates_from(self.drive, self.effective(x), self.law, growing)
+        effective, ratio = self.effective(x)
+        r = rates_from(self.drive, effective, ratio, self.law, growing)
         v = np.sum(r / x, axis=0)
         with np.errstate(divide="ignore", invalid="ignore"):
             return np.concatenate([r / v, (1.0 / v)[None]])
@@ -118,7 +119,10 @@ class _Problem:
         outside = ~finite | ~np.broadcast_to(self.kind.inside(safe, self.body), finite.shape)
         end = np.full(finite.shape, RUNNING)
         end = np.where(outside | np.isnan(margin), OUTSIDE, end)
-        end = np.where(~np.isnan(margin) & (margin <= 0.0), FAILED, end)
+        failed = ~np.isnan(margin) & (margin <= 0.0)
+        if hasattr(self.law, "k_c"):
+            failed |= finite & unstable(*self.effective(safe), self.law)
+        end = np.where(failed, FAILED, end)
         return np.where(broken, BROKEN, end)
 
 

@@ -1,6 +1,7 @@
 """Growth laws: m/cycle from ΔK in MPa√m and the stress ratio R.
 
-Each law has a threshold on ΔK (the law's own, in MPa√m): no growth at or below it.
+Each law has a threshold on ΔK (the law's own, in MPa√m): no growth at or below it. It may be given
+by stress ratio, as a table, for the ratio that acts at each point of the front.
 """
 
 from dataclasses import dataclass
@@ -17,13 +18,34 @@ class GrowthLaw(Protocol):
     @property
     def threshold(self) -> float: ...
 
+    @property
+    def formula(self) -> str: ...
+
+    @property
+    def by_ratio(self) -> tuple[tuple[float, float], ...] | None:
+        """(R, threshold in MPa√m) with R rising; None where one value holds for every R."""
+        ...
+
+    @property
+    def signed(self) -> bool:
+        """The law takes the whole range and a negative R, and says itself what opens the crack."""
+        ...
+
     def effective(self, delta_k: Floats, ratio: Floats) -> Floats:
         """The range in MPa√m that rate and threshold see."""
         ...
 
-    def rate_at(self, effective: Floats) -> Floats:
+    def rate_at(self, effective: Floats, ratio: Floats) -> Floats:
         """m/cycle at an effective range above the threshold."""
         ...
+
+
+def threshold_at(law: GrowthLaw, ratio: Floats) -> Floats | float:
+    """The threshold in MPa√m at a stress ratio; the end values hold beyond the table's ends."""
+    if law.by_ratio is None:
+        return law.threshold
+    ratios, values = np.asarray(law.by_ratio, dtype=float).T
+    return np.asarray(np.interp(ratio, ratios, values), dtype=float)
 
 
 @dataclass(frozen=True)
@@ -38,13 +60,15 @@ class Paris:
     c: float
     m: float
     threshold: float = 0.0
+    by_ratio: tuple[tuple[float, float], ...] | None = None
+    signed = False
     name = "paris"
     formula = "da/dN = C ΔK^m"
 
     def effective(self, delta_k: Floats, ratio: Floats) -> Floats:
         return delta_k
 
-    def rate_at(self, effective: Floats) -> Floats:
+    def rate_at(self, effective: Floats, ratio: Floats) -> Floats:
         return np.asarray(self.c * effective**self.m)
 
 
@@ -61,6 +85,8 @@ class TwoStage:
     c2: float
     m2: float
     threshold: float = 0.0
+    by_ratio: tuple[tuple[float, float], ...] | None = None
+    signed = False
     name = "two-stage"
     formula = "da/dN = C₁ ΔK^m₁ below the crossing, C₂ ΔK^m₂ above"
 
@@ -72,7 +98,7 @@ class TwoStage:
     def effective(self, delta_k: Floats, ratio: Floats) -> Floats:
         return delta_k
 
-    def rate_at(self, effective: Floats) -> Floats:
+    def rate_at(self, effective: Floats, ratio: Floats) -> Floats:
         first = self.c1 * effective**self.m1
         second = self.c2 * effective**self.m2
         return np.where(effective < self.crossing, first, second)
@@ -92,11 +118,13 @@ class Walker:
     m: float
     gamma: float
     threshold: float = 0.0
+    by_ratio: tuple[tuple[float, float], ...] | None = None
+    signed = False
     name = "walker"
     formula = "da/dN = C [ΔK / (1 − R)^(1 − γ)]^m"
 
     def effective(self, delta_k: Floats, ratio: Floats) -> Floats:
         return np.asarray(delta_k / (1.0 - ratio) ** (1.0 - self.gamma))
 
-    def rate_at(self, effective: Floats) -> Floats:
+    def rate_at(self, effective: Floats, ratio: Floats) -> Floats:
         return np.asarray(self.c * effective**self.m)

@@ -2,8 +2,9 @@
 
 ΔK is the part of the cycle that opens the crack: K_max − max(K_min, 0), the definition of ASTM
 E647 (3.2, crack-tip stress intensity range; K_min is taken as nil for negative stress ratios). A
-cycle whose K_max is not positive does not grow the crack. This holds where residual stress is
-nil; an as-welded crack sees the full range, and is referred until that is computed.
+cycle whose K_max is not positive does not grow the crack. Residual stress moves both ends of the
+cycle, so that an as-welded crack sees the full range at a high stress ratio. A law that has its own
+closure function takes the whole range with its sign.
 """
 
 from collections.abc import Sequence
@@ -16,7 +17,7 @@ from numpy.typing import NDArray
 from assessment.kinds.base import Body, Kind
 from assessment.validity import Floats
 
-from .laws import GrowthLaw
+from .laws import GrowthLaw, threshold_at
 from .loads import CycleBlock
 
 
@@ -54,8 +55,9 @@ def k_by_load(kind: Kind, x: Floats, names: Sequence[str], body: Body) -> Floats
     return np.moveaxis(kind.stress_intensity(x, one_each, body), 1, 0)
 
 
-def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> Floats:
-    """The law's effective range, shape (blocks, points, samples); nil where it stays shut."""
+def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> tuple[Floats, Floats]:
+    """The law's effective range and the stress ratio, each of shape (blocks, points, samples); the
+    range is nil where the crack stays shut."""
     first = _weighed(drive.upper, unit_k)
     second = _weighed(drive.lower, unit_k)
     if np.any(drive.residual != 0.0):
@@ -63,18 +65,36 @@ def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> Floats:
         held = np.maximum(_weighed(drive.residual, unit_k), 0.0)
         first, second = first + held, second + held
     high = np.maximum(np.maximum(first, second), 0.0)
-    low = np.maximum(np.minimum(first, second), 0.0)
+    low = np.minimum(first, second)
+    low = np.where(high > 0.0, low, 0.0) if law.signed else np.maximum(low, 0.0)
     ratio = np.divide(low, high, out=np.zeros_like(low), where=high > 0.0)
-    return law.effective(high - low, ratio)
+    return law.effective(high - low, ratio), ratio
+
+
+def grows(effective: Floats, ratio: Floats, law: GrowthLaw) -> NDArray[np.bool_]:
+    """Which block grows which point: above the threshold at its stress ratio."""
+    return np.asarray(effective > threshold_at(law, ratio))
+
+
+def unstable(effective: Floats, ratio: Floats, law: GrowthLaw) -> NDArray[np.bool_]:
+    """True per sample where the largest K of some cycle has reached the law's K_c."""
+    k_c = getattr(law, "k_c", None)
+    if k_c is None:
+        return np.zeros(effective.shape[-1], dtype=bool)
+    return np.asarray(np.any(effective / (1.0 - ratio) >= k_c, axis=(0, 1)))
 
 
 def rates_from(
-    drive: Drive, effective: Floats, law: GrowthLaw, growing: NDArray[np.bool_]
+    drive: Drive,
+    effective: Floats,
+    ratio: Floats,
+    law: GrowthLaw,
+    growing: NDArray[np.bool_],
 ) -> Floats:
     """m per unit of usage at each point, summed over the blocks that grow it."""
     # The rate is evaluated where it counts only; elsewhere 1 stands in and is masked out.
-    per_cycle = np.where(growing, law.rate_at(np.where(effective > 0.0, effective, 1.0)), 0.0)
-    return _weighed(drive.per_usage, per_cycle)
+    rate = law.rate_at(np.where(effective > 0.0, effective, 1.0), ratio)
+    return _weighed(drive.per_usage, np.where(growing, rate, 0.0))
 
 
 def _weighed(weights: Floats, values: Floats) -> Floats:
@@ -89,8 +109,8 @@ def rates(
     """m per unit of usage at each point of the front, shape of x. x : (points, ...) in m."""
     x2, shape = _two_axes(x)
     drive = drive_of(blocks)
-    effective = effective_ranges(drive, k_by_load(kind, x2, drive.names, body), law)
-    found = rates_from(drive, effective, law, effective > law.threshold)
+    effective, ratio = effective_ranges(drive, k_by_load(kind, x2, drive.names, body), law)
+    found = rates_from(drive, effective, ratio, law, grows(effective, ratio, law))
     return found.reshape(shape)
 
 

@@ -21,8 +21,8 @@ INCH = 0.0254
 
 
 def rate(law, delta_k, ratio=0.0):
-    effective = law.effective(np.asarray(delta_k, dtype=float), np.asarray(ratio, dtype=float))
-    return law.rate_at(effective)
+    ratio = np.asarray(ratio, dtype=float)
+    return law.rate_at(law.effective(np.asarray(delta_k, dtype=float), ratio), ratio)
 
 
 @pytest.mark.parametrize("name", [n for n in RECORDS if n.startswith("b79_air")])

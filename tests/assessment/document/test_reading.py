@@ -103,7 +103,11 @@ def test_deeper_than_twelve_levels_is_refused():
             {"material__toughness": {"model": "charpy", "energy_j": 40}},
             "material.toughness.correlation",
         ),
-        ({"material__growth": {"law": "forman", "c": 1, "m": 3}}, "material.growth.law"),
+        (
+            {"material__growth": {"law": "forman", "c": 1, "m": 3}},
+            "material.growth.k_c_mpa_sqrt_m",
+        ),
+        ({"material__bounding__growth": {"law": "paris", "c": 1}}, "material.bounding.growth.m"),
         ({"material__growth__c": -1}, "material.growth.c"),
         ({"material__growth__m": 30}, "material.growth.m"),
         ({"material__bounding__growth__m": -1}, "material.bounding.growth.m"),
@@ -150,10 +154,6 @@ def test_a_maximum_equal_to_the_peak_passes_and_one_above_it_does_not():
         ({"material__typical": True}, "material.typical"),
         ({"material__bounding": DROP}, "material.bounding.toughness"),
         ({"material__bounding__growth": DROP}, "material.bounding.growth"),
-        (
-            {"material__bounding__growth": {"law": "forman"}},
-            "material.bounding.growth.law",
-        ),
         ({"material__bounding__stands_for": DROP}, "material.bounding.stands_for"),
         ({"loading__residual": DROP}, "loading.residual"),
         ({"loading__cycles": DROP}, "loading.cycles"),
