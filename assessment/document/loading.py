@@ -6,6 +6,7 @@ from assessment.document.case import Loading, Missing
 from assessment.document.fields import Fields
 from assessment.document.profile import Profiles
 from assessment.document.refusal import CaseRefused
+from assessment.document.stress_history import KEYS, read_history_cycles
 from assessment.growth import CycleBlock
 from assessment.kinds.base import Kind
 from assessment.toughness import RATES
@@ -145,6 +146,9 @@ def _cycles(
     if said is not None:
         return (), said
     kind = profiles.kind
+    if isinstance(loading.values["cycles"], dict):
+        fields = Fields(loading.path("cycles"), loading.values["cycles"], KEYS)
+        return read_history_cycles(fields, kind, peak, PEAK_SLACK, CYCLE_BINS)
     keys = [with_word(key, word) for word in ("range", "max") for key in kind.load_keys]
     known = (*keys, "stress_ratio", "per_usage", "profile")
     entries = loading.objects("cycles", known, CYCLE_BINS)
