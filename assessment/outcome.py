@@ -9,6 +9,8 @@ bounding.kind      the kind it is assessed as; bounding.became_through; bounding
 rules              also "growth measured …" (row 3 of the table), which is not computed yet
 rate               usage per day behind the dates, and how it came about
 restriction        null, or {"factor", "peak": {…}, "words"} where a reduced load restores reserve
+life.beyond        null, or where the life ends by break-through: what the crack becomes then, each
+                   change with its usage and sizes, and how long it holds; never part of the life
 leak               null, or for a pressure boundary whose life ends by break-through: whether it
                    leaks before it breaks
 stop_size          also new_crack {"depth_mm", "length_mm"} or null, and why_not
@@ -31,6 +33,7 @@ from assessment.leak import Leak
 from assessment.lifetime import Critical, LifeFound, growth_now
 from assessment.procedure import Found
 from assessment.stop_size import StopSize
+from assessment.transitions import Beyond
 from assessment.working import working
 
 
@@ -45,7 +48,7 @@ def outcome_of(case: Case, found: Found) -> dict[str, Any]:
         "failure": _failure(found.best_look, found.best),
         "critical": _critical(found.best_critical),
         "growth_now": growth_now(found.best_look, found.best.corner),
-        "life": _life(found.best_life),
+        "life": {**_life(found.best_life), "beyond": _beyond(found.best_beyond)},
         "bounding": _bounding(case, found),
         "forecast": None,
         "rules": [_rule(one) for one in found.rules],
@@ -147,6 +150,26 @@ def _life(one: LifeFound) -> dict[str, Any]:
         "ends_by": one.ends_by,
         "why_not": one.why,
         "path": [list(row) for row in one.path],
+    }
+
+
+def _beyond(one: Beyond | None) -> dict[str, Any] | None:
+    if one is None:
+        return None
+    return {
+        "usage": finite(one.usage),
+        "ends_by": one.ends_by,
+        "why_not": one.why,
+        "transitions": [
+            {
+                "usage": step.usage,
+                "from": step.before,
+                "to": step.after,
+                "depth_mm": step.depth,
+                "length_mm": step.length,
+            }
+            for step in one.transitions
+        ],
     }
 
 

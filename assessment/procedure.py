@@ -28,6 +28,7 @@ from assessment.needs import needs
 from assessment.restriction import ReducedLoad, reduced_load
 from assessment.stop_size import StopSizes, stop_sizes
 from assessment.toughness import ToughnessResult
+from assessment.transitions import Beyond, beyond
 from assessment.validity import Mark
 from assessment.verdict import (
     CrackFacts,
@@ -52,6 +53,7 @@ class Found:
     best: Estimate
     best_critical: Critical
     best_life: LifeFound
+    best_beyond: Beyond | None
     lacks: tuple[str, ...]
     bounding_look: Look
     bounding_toughness: ToughnessResult
@@ -130,6 +132,7 @@ def compute(case: Case) -> Found:
         best=best,
         best_critical=critical(best_look, best, best_life),
         best_life=best_life,
+        best_beyond=beyond(best_look, best_corner, best_life),
         lacks=lacks,
         bounding_look=look,
         bounding_toughness=bounding_toughness,
