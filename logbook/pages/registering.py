@@ -26,6 +26,7 @@ from logbook.actions.register_material import register_material
 from logbook.actions.register_person import register_person
 from logbook.actions.register_site import register_site
 from logbook.actions.set_unsigned_policy import set_unsigned_policy
+from logbook.cases.growth_library import typical_law, typical_laws
 from logbook.errors import Refusal, invalid, not_permitted
 from logbook.models import Component, Licence, Location, Material, Person, Photo, Site
 from logbook.records.case_lines import case_lines
@@ -345,14 +346,33 @@ def new_material(request: Asked, slug: str) -> HttpResponse:
                 for sentence in left:
                     form.add_error(None, sentence)
     else:
+        typical = typical_law(request.GET.get("typical", ""))
+        start = _body_of(before) if typical is None else typical.material()
         form = MaterialForm(initial=_revised(before))
-        values = Values.of(MATERIAL, _body_of(before), {})
+        values = Values.of(MATERIAL, start, {})
         values.sourced = False
     return render(
         request,
         "logbook/material_form.html",
         {"tab": "index", "site": one, "foot_zone": one.time_zone, "form": form, "values": values},
         status=form_status(form),
+    )
+
+
+@login_required
+def growth_laws(request: Asked, slug: str) -> HttpResponse:
+    """Published growth laws to start a material from; typical values, never for acceptance."""
+    one = access.site_for(request.user, slug, "see")
+    return render(
+        request,
+        "logbook/growth_laws.html",
+        {
+            "tab": "index",
+            "site": one,
+            "foot_zone": one.time_zone,
+            "laws": typical_laws(),
+            "may_engineer": may(request, one, "engineer"),
+        },
     )
 
 

@@ -70,4 +70,5 @@ urlpatterns = [
     path("site/<slug:slug>/licence/<int:pk>/revoke/", registering.revoke, name="revoke"),
     path("site/<slug:slug>/component/", registering.new_component, name="new-component"),
     path("site/<slug:slug>/material/", registering.new_material, name="new-material"),
+    path("site/<slug:slug>/growth-laws/", registering.growth_laws, name="growth-laws"),
 ]

@@ -159,3 +159,14 @@ def test_a_tensile_curve_is_read_for_strength_and_energy(book: Book, as_: As) ->
     plain = Material.objects.exclude(pk=made.pk)[0]
     page = as_("engineer").get(reverse("material", args=[plain.pk])).content.decode()
     assert "area below the curve" not in page and "Strength is not toughness" in page
+
+
+def test_a_published_growth_law_starts_a_material(book: Book, as_: As) -> None:
+    listed = as_("crew").get(reverse("growth-laws", args=[book.site.slug]))
+    page = listed.content.decode()
+    assert listed.status_code == 200 and "Typical values" in page and "start a material" not in page
+    assert as_("stranger").get(reverse("growth-laws", args=[book.site.slug])).status_code == 404
+    address = reverse("new-material", args=[book.site.slug])
+    form = as_("engineer").get(f"{address}?typical=two-stage-air-rfrom-0.5-2sd").content.decode()
+    assert 'value="two-stage"' in form and "growth.c2" in form and 'value="5.1"' in form
+    assert "typical" in form
