@@ -4,6 +4,7 @@ from collections.abc import Iterator, Sequence
 
 from assessment.document.case import Case
 from assessment.failure.yielding import SMALL_PART, plane_strain_thickness, plastic_zone
+from assessment.interaction import INTERACTION, Combined
 from assessment.leak import Leak
 from assessment.validity import Mark
 
@@ -60,6 +61,7 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
     crack, loading = case.crack, case.loading
     if not crack.found:
         yield f"No crack was measured here: the size assessed is assumed ({crack.source})."
+    yield from _of_neighbours(crack.combined)
     if crack.depth_basis == "assumed":
         yield f"Depth assumed, not measured: {crack.depth_source}."
     if crack.depth_basis == "at most":
@@ -86,6 +88,15 @@ def _of_case(case: Case, became_through: bool) -> Iterator[str]:
             "At its bounding size the crack goes through the wall and is assessed as a through "
             "crack; bending of the wall then counts as membrane stress at its outer-fibre value."
         )
+
+
+def _of_neighbours(combined: Combined | None) -> Iterator[str]:
+    if combined is None:
+        return
+    for one, why in combined.joined:
+        yield f"Assessed as one crack with {one.name}: {why} ({INTERACTION.source})."
+    for one, why in combined.apart:
+        yield f"{one.name.capitalize()} stands apart: {why} ({INTERACTION.source})."
 
 
 def _closed_ends(case: Case) -> Iterator[str]:

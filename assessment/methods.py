@@ -17,6 +17,7 @@ from assessment.validity import Validity
 
 PACKAGES = (
     ("Stress intensity and reference stress", "assessment.relations"),
+    ("Cracks beside each other", "assessment.interaction"),
     ("Failure", "assessment.failure"),
     ("Fracture toughness", "assessment.toughness"),
     ("Crack growth", "assessment.growth"),
@@ -75,6 +76,9 @@ def chapters() -> tuple[Chapter, ...]:
 
 def _modules(package: str) -> Iterator[ModuleType]:
     root = importlib.import_module(package)
+    if not hasattr(root, "__path__"):
+        yield root
+        return
     for found in sorted(pkgutil.iter_modules(root.__path__), key=lambda one: one.name):
         yield importlib.import_module(f"{package}.{found.name}")
 

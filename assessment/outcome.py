@@ -11,6 +11,8 @@ rate               usage per day behind the dates, and how it came about
 restriction        null, or {"factor", "peak": {…}, "words"} where a reduced load restores reserve
 life.beyond        null, or where the life ends by break-through: what the crack becomes then, each
                    change with its usage and sizes, and how long it holds; never part of the life
+combined           null, or what the crack and its neighbours are assessed as, which of them
+                   joined or stand apart, and why
 leak               null, or for a pressure boundary whose life ends by break-through: whether it
                    leaks before it breaks
 stop_size          also new_crack {"depth_mm", "length_mm"} or null, and why_not
@@ -28,6 +30,7 @@ from assessment.document.case import Case
 from assessment.engine import ENGINE
 from assessment.estimate import Estimate, Look, arrays, loads_for
 from assessment.failure import Point, diagram_of, limit_curve
+from assessment.interaction import INTERACTION, Combined
 from assessment.interval import Next, Rule, rate
 from assessment.leak import Leak
 from assessment.lifetime import Critical, LifeFound, growth_now
@@ -63,6 +66,7 @@ def outcome_of(case: Case, found: Found) -> dict[str, Any]:
             "conditions": list(found.decision.conditions),
             "before_return": found.decision.before_return,
         },
+        "combined": _combined(case.crack.combined),
         "cautions": _cautions(case, found),
         "working": working(case, found),
         "figures": _figures(found),
@@ -74,6 +78,18 @@ def _cautions(case: Case, found: Found) -> list[str]:
     yielding = tuple(of_yielding(case, largest, found.best_toughness.value))
     became = found.bounding.corner.became
     return list(cautions(case, found.marks, became, found.leak, yielding))
+
+
+def _combined(one: Combined | None) -> dict[str, Any] | None:
+    if one is None:
+        return None
+    return {
+        "depth_mm": mm(one.depth),
+        "length_mm": mm(one.length),
+        "joined": [{"name": other.name, "why": why} for other, why in one.joined],
+        "apart": [{"name": other.name, "why": why} for other, why in one.apart],
+        "rule": INTERACTION.source,
+    }
 
 
 def mm(metres: float | None) -> float | None:

@@ -129,6 +129,9 @@ def _bounding_size(case: Case, found: "Found") -> WorkingStep:
     if not case.crack.found:
         numbers = f"the size assumed: {case.crack.source}"
     corner = found.bounding.corner
+    if case.crack.combined is not None and case.crack.combined.joined:
+        names = ", ".join(one.name for one, _ in case.crack.combined.joined)
+        numbers = f"one crack with {names}; {numbers}"
     return WorkingStep(
         "Bounding size, worst of the corners",
         "size − bias ± size_confidence_sd · sd",

@@ -10,6 +10,7 @@ from typing import Any
 
 from assessment.failure.tensile import TensileCurve
 from assessment.growth import CycleBlock, GrowthLaw
+from assessment.interaction import Combined
 from assessment.kinds.base import Kind
 from assessment.toughness import ToughnessModel
 
@@ -39,7 +40,10 @@ class Sizing:
 
 @dataclass(frozen=True)
 class Crack:
-    """One crack, or the crack that a look could have missed (``found`` False). Sizes in m."""
+    """One crack, or the crack that a look could have missed (``found`` False). Sizes in m.
+
+    combined : how its neighbours count; depth and length are then those of the whole
+    """
 
     kind: Kind
     found: bool
@@ -51,6 +55,7 @@ class Crack:
     why_smaller: str | None = None
     on_record: bool = False
     source: str | None = None
+    combined: Combined | None = None
 
 
 @dataclass(frozen=True)

@@ -6,6 +6,7 @@ from typing import Any
 from assessment.document.case import Crack, Missing, Sizing
 from assessment.document.fields import Fields, as_number
 from assessment.document.refusal import CaseRefused
+from assessment.interaction import Combined, Neighbour, combine
 from assessment.kinds import KINDS
 from assessment.kinds.base import Kind
 
@@ -50,6 +51,7 @@ _CRACK_KEYS = (
     "depth_source",
     "sizing",
     "why_smaller",
+    "neighbours",
 )
 SIZING_KEYS = ("method", "depth_sd_mm", "length_sd_mm", "depth_bias_mm", "length_bias_mm")
 _DEPTH_BASES = ("measured", "assumed", "at least", "at most")
@@ -83,11 +85,15 @@ def _found(crack: Fields, kind: Kind, missing: list[Missing]) -> Crack:
     if basis == "at least":
         why = "the depth is a lower bound only, and how deep the crack truly is, is not known."
         missing.append(Missing("crack.depth_mm", why))
+    combined = _with_neighbours(crack, kind, depth, length, missing)
+    if combined is not None:
+        depth, length = combined.depth, combined.length
     return Crack(
         kind=kind,
         found=True,
         depth=depth,
         length=length,
+        combined=combined,
         depth_basis=basis,
         depth_source=crack.text("depth_source") if basis == "assumed" else None,
         sizing=_crack_sizing(crack, kind, missing),
@@ -96,7 +102,7 @@ def _found(crack: Fields, kind: Kind, missing: list[Missing]) -> Crack:
 
 
 def _not_found(crack: Fields, kind: Kind) -> Crack:
-    for key in (*_SIZES, "depth_basis", "depth_source", "why_smaller"):
+    for key in (*_SIZES, "depth_basis", "depth_source", "why_smaller", "neighbours"):
         if key in crack:
             raise crack.refuse(key, 'where no crack was found, sizes go under "assumed".')
     assumed = Fields(crack.path("assumed"), crack.raw("assumed"), (*_SIZES, "source"))
@@ -111,6 +117,52 @@ def _not_found(crack: Fields, kind: Kind) -> Crack:
         on_record=crack.flag("on_record", False),
         source=assumed.text("source"),
     )
+
+
+# Kinds whose length runs along a surface, where a neighbour in the same plane lies beside it.
+_SIDE_BY_SIDE = (
+    "plate-through-centre",
+    "plate-surface",
+    "weld-toe-surface",
+    "cylinder-axial-inside",
+    "cylinder-axial-outside",
+    "cylinder-axial-through",
+    "cylinder-girth-inside",
+    "cylinder-girth-outside",
+    "cylinder-girth-through",
+)
+NEIGHBOURS = 20
+
+
+def _with_neighbours(
+    crack: Fields, kind: Kind, depth: float | None, length: float | None, missing: list[Missing]
+) -> Combined | None:
+    """[{"name", "depth_mm", "length_mm", "separation_mm"}, …]: other cracks in the same plane."""
+    if "neighbours" not in crack:
+        return None
+    known = ("name", *_SIZES, "separation_mm")
+    found: list[Neighbour] = []
+    for one in crack.objects("neighbours", known, NEIGHBOURS):
+        their_depth, their_length = _sizes(one, kind)
+        if their_length is None:
+            raise one.refuse("length_mm", "this is needed and missing.")
+        separation = one.number_or_none("separation_mm", least=0.0)
+        if separation is None:
+            why = f"how far {one.text('name')} lies from this crack is missing."
+            missing.append(Missing(one.path("separation_mm"), why))
+        found.append(
+            Neighbour(
+                one.text("name"),
+                their_depth,
+                their_length,
+                None if separation is None else separation * MM,
+            )
+        )
+    if kind.name not in _SIDE_BY_SIDE or length is None:
+        why = f"no rule is here for neighbours of a crack of kind {kind.name!r}."
+        missing.append(Missing(crack.path("neighbours"), why))
+        return None
+    return combine(depth, length, found)
 
 
 def _sizes(fields: Fields, kind: Kind) -> tuple[float | None, float | None]:
