@@ -4,6 +4,7 @@ import uuid
 
 from logbook import clock
 from logbook.actions import standing
+from logbook.cases import rows
 from logbook.models import AssessmentAsked, Component, Crack, Location, Standing
 
 
@@ -16,12 +17,22 @@ def for_assessment(location: Location, crack: Crack | None, because: uuid.UUID) 
     standing.refresh(location, crack)
     if crack is not None:
         standing.refresh(location, None)
+        _ask_for_neighbours(location, crack, because)
+
+
+def _ask_for_neighbours(location: Location, crack: Crack, because: uuid.UUID) -> None:
+    """What is known of one crack can change what the cracks beside it are assessed as."""
+    for other in rows.beside(crack):
+        AssessmentAsked.objects.get_or_create(
+            location=location, crack=other, because_act=because, defaults={"asked_at": clock.now()}
+        )
+        standing.refresh(location, other)
 
 
 def for_all_places(component: Component, because: uuid.UUID) -> None:
     """What counts for the whole component, its counter say, asks for every place that stands."""
-    rows = Standing.objects.filter(location__component=component).select_related(
+    stands = Standing.objects.filter(location__component=component).select_related(
         "location__component__site", "crack"
     )
-    for row in list(rows):
+    for row in list(stands):
         for_assessment(row.location, row.crack, because)

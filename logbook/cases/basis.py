@@ -9,6 +9,7 @@ sizing      method to sizing error ({depth_sd_mm, length_sd_mm, depth_bias_mm, l
             source}) or to the text "none: why"
 detection   method to detection curve, as in the case document, with its source
 depth_ratio {value, source}: depth taken as a part of the length where only that is measured
+separation  {least_mm, source}: the least metal between two cracks at this place
 could_miss  {depth_mm, length_mm, source}: what a look that found nothing could have missed
 sources     path to the text that says where a value comes from
 """
@@ -23,7 +24,7 @@ from logbook.errors import invalid
 KEYS = frozenset(
     {
         "kind", "body", "material", "loading", "criteria", "owner", "uncertainty", "sizing",
-        "detection", "depth_ratio", "could_miss", "sources", "material_ref",
+        "detection", "depth_ratio", "could_miss", "separation", "sources", "material_ref",
     }
 )  # fmt: skip
 # A crack small enough for any part: the probe asks about the basis, not about the crack.
@@ -100,6 +101,7 @@ def _check_pairs(body: dict[str, Any]) -> None:
     for name, keys in (
         ("depth_ratio", {"value", "source"}),
         ("could_miss", {"source"}),
+        ("separation", {"least_mm", "source"}),
     ):
         part = body.get(name)
         if part is None:
@@ -113,6 +115,11 @@ def _check_pairs(body: dict[str, Any]) -> None:
     if ratio is not None and not _is_ratio(ratio["value"]):
         raise invalid(
             "A depth cannot be reckoned with this.", {"depth_ratio": ["Give a number above 0."]}
+        )
+    apart = body.get("separation")
+    if apart is not None and not _is_ratio(apart["least_mm"]) and apart["least_mm"] != 0:
+        raise invalid(
+            "This is no distance.", {"separation.least_mm": ["Give a number in mm, 0 or more."]}
         )
     for name, texts in (("sizing", True), ("detection", False)):
         by_method = body.get(name, {})

@@ -196,9 +196,42 @@ def _found(body: dict[str, Any], crack: Crack, look: Finding) -> dict[str, Any]:
     day = sizes[-1].finding.inspection.found_on
     of_day = [one for one in sizes if one.finding.inspection.found_on == day]
     return {
-        "crack": _crack(body, _largest(of_day)),
+        "crack": _crack(body, _largest(of_day)) | _neighbours(body, crack),
         "history": _history(body, crack, [one for one in sizes if one not in of_day]),
     }
+
+
+# These kinds are two cracks already: one beside it is what they say.
+PAIRS = ("plate-through-both-edges", "hole-through-two", "hole-corner-two")
+
+
+def _neighbours(body: dict[str, Any], crack: Crack) -> dict[str, Any]:
+    """The other open cracks of the place, as far apart as the basis says at the least. Where it
+    says nothing the computation asks for it, and the case is referred."""
+    others = rows.beside(crack)
+    if not others or (body["kind"] in PAIRS and len(others) == 1):
+        return {}
+    apart = body.get("separation")
+    between = {} if apart is None else {"separation_mm": apart["least_mm"]}
+    return {"neighbours": [_neighbour(body, other) | between for other in others]}
+
+
+def _neighbour(body: dict[str, Any], other: Crack) -> dict[str, Any]:
+    sizes = rows.measurements(other)
+    made: dict[str, Any] = {"name": f"crack {other.number}"}
+    start = rows.new_start(other)
+    if sizes:
+        part = _crack(body, _largest_of_newest_day(sizes))
+    elif start is not None:
+        part = _new_start(body, other, start)
+    else:
+        raise _NoCase(f"No size of crack {other.number}, beside this one, counts any more.")
+    return made | {key: part[key] for key in ("depth_mm", "length_mm") if key in part}
+
+
+def _largest_of_newest_day(sizes: list[Measurement]) -> Measurement:
+    day = sizes[-1].finding.inspection.found_on
+    return _largest([one for one in sizes if one.finding.inspection.found_on == day])
 
 
 def _largest(of_day: list[Measurement]) -> Measurement:

@@ -72,6 +72,12 @@ def measurements(crack: Crack) -> list[Measurement]:
     )
 
 
+def beside(crack: Crack) -> list[Crack]:
+    """The other open cracks of the same place, by number."""
+    others = Crack.objects.filter(location=crack.location, closed_at__isnull=True)
+    return list(others.exclude(pk=crack.pk).order_by("number"))
+
+
 def new_start(crack: Crack) -> Repair | None:
     """The newest repair after which the crack goes on with a new start."""
     return (

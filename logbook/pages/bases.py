@@ -104,7 +104,7 @@ def _compared(one: Basis, before: Basis | None) -> list[dict[str, str]]:
 def _lines(one: Basis) -> list[Any]:
     body = _read(one.body)
     sources = {str(k): str(v) for k, v in body.get("sources", {}).items()}
-    extra = {"sizing", "detection", "depth_ratio", "could_miss", "uncertainty"}
+    extra = {"sizing", "detection", "depth_ratio", "separation", "could_miss", "uncertainty"}
     shown = {**body, "crack": {k: body[k] for k in extra if k in body}}
     return list(case_lines(json.loads(json.dumps(shown, default=float)), sources))
 

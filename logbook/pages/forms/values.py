@@ -64,6 +64,7 @@ HINTS = {
     "depth_ratio.value": gettext_lazy(
         "depth taken as this part of the length, where only that is seen"
     ),
+    "separation.least_mm": gettext_lazy("the least metal between two cracks at this place"),
     "could_miss.source": gettext_lazy("where it comes from that a look may miss this much"),
 }
 MATERIAL = (
@@ -104,6 +105,8 @@ def names_for(kind: str) -> tuple[str, ...]:
         "owner.allows_restriction",
         "depth_ratio.value",
         "depth_ratio.source",
+        "separation.least_mm",
+        "separation.source",
         "could_miss.depth_mm",
         "could_miss.length_mm",
         "could_miss.source",
