@@ -32,6 +32,7 @@ class Beliefs:
     log_weights: Floats
     mean: Floats
     covariance: Floats
+    curvature: Floats
     wander_sd: Floats
     wander_span: Floats
     error_var: Floats
@@ -43,7 +44,7 @@ class Beliefs:
 def alone(times: Floats, sizes: Floats, step: float) -> Beliefs:
     """With no fleet. times, sizes : the crack's own readings, for their scale alone."""
     reference = float(np.exp(np.mean(np.log(sizes))))
-    z = normals(_DRAWS, 3, _SEED)
+    z = normals(_DRAWS, 4, _SEED)
 
     def spread(prior: priors.Lognormal, points: Floats) -> Floats:
         return np.asarray(prior.median * np.exp(prior.log_sd * points))
@@ -58,6 +59,7 @@ def alone(times: Floats, sizes: Floats, step: float) -> Beliefs:
         log_weights=np.full(_DRAWS, -np.log(_DRAWS)),
         mean=np.tile([float(rate), priors.EXPONENT_MEAN], (_DRAWS, 1)),
         covariance=np.tile(covariance, (_DRAWS, 1, 1)),
+        curvature=priors.CURVATURE_MEAN + priors.CURVATURE_SD * z[3],
         wander_sd=spread(priors.WANDER, z[1]),
         wander_span=spread(priors.WANDER_SPAN, z[2]) * span,
         error_var=(error**2 + priors.rounding_variance(step)) / reference**2,
@@ -81,6 +83,7 @@ def with_fleet(fleet: Population, times: Floats, step: float) -> Beliefs:
         log_weights=np.r_[logs + np.log1p(-chance), logs + np.log(chance)],
         mean=np.concatenate([fleet.mean, centre]),
         covariance=np.concatenate([fleet.covariance, fleet.covariance + wide]),
+        curvature=np.tile(fleet.curvature, 2),
         wander_sd=np.tile(fleet.wander_sd, 2),
         wander_span=np.tile(fleet.wander_span, 2),
         error_var=np.tile(error, 2),

@@ -16,8 +16,8 @@ from assessment.validity import Floats
 from .beliefs import Beliefs, alone, shared_error, with_fleet
 from .outline import Readings, first_guess, fitted, rates_at, readings, sizes_at, slopes
 from .points import effective_size, normals, quantiles, systematic, uniforms, weights_of
-from .population import Population
-from .rate_law import rate_at, size_after, time_between
+from .population import Population, curved_lead
+from .rate_law import curvature_lead, rate_at, size_after, time_between
 from .wander import State, advance, ahead, clock_covariance, drawn, measured, start
 
 SAMPLES = 4096
@@ -42,6 +42,7 @@ class Trend:
     last: float
     weights: Floats
     path: Floats
+    curvature: Floats
     lead: Floats
     wander: Floats
     wander_sd: Floats
@@ -115,10 +116,13 @@ def _straight(data: Readings, path: Floats, held: Beliefs) -> _Normals:
     spread = noise + np.einsum("ri,dij,sj->drs", jacobian, prior, jacobian)
     left = value - centre @ jacobian.T
     gain = prior @ jacobian.T @ np.linalg.inv(spread)
-    mean = centre + np.einsum("dir,dr->di", gain, left)
     covariance = prior - gain @ jacobian @ prior
     covariance = 0.5 * (covariance + covariance.transpose(0, 2, 1))
     sign_free = np.linalg.slogdet(spread)[1]
+    curved = curved_lead(path, size)
+    left = left - np.outer(held.curvature, curved[0] * rates)
+    gain = prior @ jacobian.T @ np.linalg.inv(spread)
+    mean = centre + np.einsum("dir,dr->di", gain, left)
     misfit = np.einsum("dr,dr->d", left, np.linalg.solve(spread, left[..., None])[..., 0])
     return _Normals(mean, _root(covariance), -0.5 * (sign_free + misfit))
 
@@ -154,6 +158,7 @@ def _weighted(
         last=float(data.times[0, -1]),
         weights=weights,
         path=path,
+        curvature=held.curvature[chosen],
         lead=lead,
         wander=wander,
         wander_sd=held.wander_sd[chosen],
@@ -191,12 +196,24 @@ def _filtered(
     for n, elapsed in enumerate(data.elapsed[0]):
         if n:
             state = advance(state, elapsed - before, sd, span)
-        size = size_after(np.asarray(elapsed), path[0], path[1], np.exp(path[2]))
+        size = _size(np.asarray(elapsed), path, held.curvature[chosen])
         rate = rate_at(size, path[0], path[1])
         variance = own + np.where(np.isfinite(rate), rate, 0.0) ** 2 * held.common_var[n]
         state = measured(state, data.sizes[0, n] - size, rate, variance)
         before = elapsed
     return state
+
+
+def _size(clock: Floats, path: Floats, curvature: Floats) -> Floats:
+    """Nominal size at a clock time; the lead by curvature is that of the way itself, so it is
+    found by going round twice."""
+    start_size = np.exp(path[2])
+    size = size_after(clock, path[0], path[1], start_size)
+    if np.any(curvature != 0.0):
+        for _ in range(2):
+            lead = curvature_lead(start_size, size, path[0], path[1], curvature)
+            size = size_after(clock + lead, path[0], path[1], start_size)
+    return size
 
 
 def sizes_ahead(one: Trend, times: Floats) -> Floats:
@@ -214,9 +231,7 @@ def sizes_ahead(one: Trend, times: Floats) -> Floats:
         leads, wanders = ahead(lead, wander, part, one.wander_sd, one.wander_span, noise)
         lead, wander, now = leads[-1], wanders[-1], max(time, now)
         clock = now - one.first + lead
-        made.append(
-            one.reference * size_after(clock, one.path[0], one.path[1], np.exp(one.path[2]))
-        )
+        made.append(one.reference * _size(clock, one.path, one.curvature))
     return np.array(made)
 
 
@@ -241,7 +256,9 @@ def times_to(one: Trend, size: float) -> Floats:
     """Times at which ``size`` is reached, for each sample; the last reading's where it is already
     beyond, infinite where it is not reached in a hundred times its nominal way."""
     log_rate, exponent, start_size = one.path[0], one.path[1], np.exp(one.path[2])
-    goal = time_between(start_size, np.asarray(size / one.reference), log_rate, exponent)
+    end = np.asarray(size / one.reference)
+    goal = time_between(start_size, end, log_rate, exponent)
+    goal = goal - curvature_lead(start_size, end, log_rate, exponent, one.curvature)
     clock = one.last - one.first + one.lead
     way = np.maximum(goal - clock, 0.0)
     # Two in three steps fall inside the nominal way; what wanders more slowly goes on as it was.

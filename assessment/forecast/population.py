@@ -1,10 +1,11 @@
 """What a fleet teaches: how log rate and exponent scatter between cracks, how rates wander.
 
-Of crack i, (θᵢ, pᵢ) ~ N(μ, Σ); its rate wanders (``wander``); a reading at time t has the error of
-its recording, and one in its time that all cracks read at t share: y = a(t) + a'(t)·(D(t) + c_t) +
-e. Straightened at each crack's fitted path (``outline``) all of it is normal given the seven
-spreads, and the paths, μ and c integrate out exactly. The spreads themselves are integrated by
-importance sampling from a Student t at their mode.
+Of crack i, (θᵢ, pᵢ) ~ N(μ, Σ), and all share the curvature κ that geometry gives; its rate wanders
+(``wander``); a reading at time t has the error of its recording, and one in its time that all
+cracks read at t share: y = a(t) + a'(t)·(D(t) + c_t) + e. Straightened at each crack's fitted path
+(``outline``) all of it is normal given the seven spreads, and the paths, μ, κ and c integrate out
+exactly. The spreads themselves are integrated by importance sampling from a Student t at their
+mode.
 
 Sources: the straightened hierarchical model of M. J. Lindstrom & D. M. Bates, Biometrics 46 (1990)
 673-687; C. J. Lu & W. Q. Meeker, Technometrics 35 (1993) 161-174, for its use on crack sizes.
@@ -22,6 +23,7 @@ from assessment.validity import Floats
 from . import priors
 from .outline import Readings, first_guess, fitted, rates_at, readings, sizes_at, slopes
 from .points import effective_size, normals, weights_of
+from .rate_law import curvature_lead
 from .wander import clock_covariance
 
 _DRAWS = 256
@@ -37,10 +39,10 @@ class Population:
 
     cracks : how many it was learned from
     weights : (draws,); mean : of (θ, p), (draws, 2); covariance : of a further crack's (θ, p) about
-    it, uncertainty of μ included, (draws, 2, 2); wander_sd, wander_span, error_sd : (draws,)
-    common_times, common_mean, common_sd : readings' times and the error they share, in time
-    common_unseen_sd : of the error at a time that the fleet has not seen
-    effective : effective number of the draws
+    it, uncertainty of μ included, (draws, 2, 2); curvature : κ, (draws,); wander_sd, wander_span,
+    error_sd : (draws,) common_times, common_mean, common_sd : readings' times and the error they
+    share, in time common_unseen_sd : of the error at a time that the fleet has not seen effective :
+    effective number of the draws
     """
 
     cracks: int
@@ -48,6 +50,7 @@ class Population:
     weights: Floats
     mean: Floats
     covariance: Floats
+    curvature: Floats
     wander_sd: Floats
     wander_span: Floats
     error_sd: Floats
@@ -68,6 +71,7 @@ class _Straight:
     times: Floats
     there: Floats
     at_time: Floats
+    curved: Floats
     start: Floats
 
 
@@ -82,7 +86,7 @@ class _Scales:
 
 @dataclass(frozen=True)
 class _Fit:
-    """For each draw of spreads: log posterior, and normal of z = (μ, c)."""
+    """For each draw of spreads: log posterior, and normal of z = (μ, κ, c)."""
 
     log_posterior: Floats
     mean: Floats
@@ -131,6 +135,8 @@ _PRIORS = (
     priors.READING_ERROR,
     priors.COMMON_TIME,
 )
+# What is held of μ and κ before: as good as nothing of the rate, so nil does as its mean.
+_CENTRE = np.array([0.0, priors.EXPONENT_MEAN, priors.CURVATURE_MEAN])
 _PRIOR_SD = np.array([one.log_sd for one in _PRIORS])
 
 
@@ -163,8 +169,17 @@ def _straighten(data: Readings, path: Floats, times: Floats) -> _Straight:
         times=data.times,
         there=usable.astype(float),
         at_time=at_time.astype(float),
+        curved=np.where(usable, curved_lead(path, np.where(usable, size, 1.0)), 0.0),
         start=path[2],
     )
+
+
+def curved_lead(path: Floats, size: Floats) -> Floats:
+    """Lead of the clock for each unit of curvature."""
+    small = 1e-3
+    start = np.exp(path[2])[:, None]
+    lead = curvature_lead(start, size, path[0][:, None], path[1][:, None], np.asarray(small))
+    return lead / small
 
 
 def _noise(s: _Straight, spreads: Floats, scales: _Scales) -> Floats:
@@ -188,9 +203,10 @@ def _fit(s: _Straight, spreads: Floats, scales: _Scales) -> _Fit:
     covariance = _noise(s, spreads, scales) + np.einsum(
         "cri,dij,csj->dcrs", s.jacobian, effects, s.jacobian
     )
-    shared = np.concatenate([s.jacobian[..., :2], s.rates[..., None] * s.at_time], axis=-1)
+    shifts = np.concatenate([s.curved[..., None], s.at_time], axis=-1)
+    shared = np.concatenate([s.jacobian[..., :2], s.rates[..., None] * shifts], axis=-1)
     # ln x₀ is measured from the fitted one, μ from a point amid the fleet.
-    centre = np.r_[_centre(s), np.zeros(seen)]
+    centre = np.r_[_CENTRE, np.zeros(seen)]
     left = s.values - shared @ centre - s.jacobian[..., 2] * s.start[:, None]
     lower = np.linalg.cholesky(covariance)
     both = np.concatenate([shared, left[..., None]], axis=-1)
@@ -200,18 +216,17 @@ def _fit(s: _Straight, spreads: Floats, scales: _Scales) -> _Fit:
         [
             np.full((draws, 1), priors.LOG_RATE_SD**-2.0),
             np.full((draws, 1), priors.EXPONENT_SD**-2.0),
+            np.full((draws, 1), priors.CURVATURE_SD**-2.0),
             np.repeat(np.exp(-2.0 * spreads[6])[:, None] / scales.spacing**2, seen, axis=1),
         ],
         axis=1,
     )
-    offset = np.zeros(2 + seen)
-    offset[1] = priors.EXPONENT_MEAN - centre[1]
-    precision = gram[:, :-1, :-1] + prior_precision[:, :, None] * np.eye(2 + seen)
-    push = gram[:, :-1, -1] + prior_precision * offset
+    precision = gram[:, :-1, :-1] + prior_precision[:, :, None] * np.eye(3 + seen)
+    push = gram[:, :-1, -1]
     root = np.linalg.cholesky(precision)
     shift = np.linalg.solve(precision, push[..., None])[..., 0]
     half_logs = np.log(np.diagonal(lower, axis1=-2, axis2=-1)).sum(axis=(1, 2))
-    fit = gram[:, -1, -1] + np.sum(prior_precision * offset**2, axis=1)
+    fit = gram[:, -1, -1]
     log_likelihood = (
         -half_logs
         - np.log(np.diagonal(root, axis1=-2, axis2=-1)).sum(axis=1)
@@ -220,11 +235,6 @@ def _fit(s: _Straight, spreads: Floats, scales: _Scales) -> _Fit:
     )
     prior = -0.5 * np.sum(((spreads.T - _prior_mean()) / _PRIOR_SD) ** 2, axis=1)
     return _Fit(log_likelihood + prior, centre + shift, np.linalg.inv(precision))
-
-
-def _centre(s: _Straight) -> Floats:
-    """A point in (θ, p) amid the fleet, so that numbers stay small."""
-    return np.array([0.0, priors.EXPONENT_MEAN])
 
 
 def _mode(s: _Straight, begin: Floats, scales: _Scales) -> Floats:
@@ -256,23 +266,29 @@ def _sampled(
     values, vectors = np.linalg.eigh(_hessian(s, mode, scales))
     # Where the data say nothing, the prior's own spread is the widest that is needed.
     widths = 1.0 / np.sqrt(np.maximum(values, np.max(_PRIOR_SD) ** -2.0))
-    points = normals(_DRAWS, 7 + _FREEDOM, _SEED)
-    stretch = np.sqrt(_FREEDOM / np.sum(points[7:] ** 2, axis=0))
+    points = normals(_DRAWS, 8 + _FREEDOM, _SEED)
+    stretch = np.sqrt(_FREEDOM / np.sum(points[7:-1] ** 2, axis=0))
     student = points[:7] * stretch
     spreads = mode[:, None] + vectors @ (widths[:, None] * student)
     log_proposal = -0.5 * (_FREEDOM + 7) * np.log1p(np.sum(student**2, axis=0) / _FREEDOM)
     found = _fit(s, spreads, scales)
     weights = weights_of(found.log_posterior - log_proposal)
-    common = found.mean[:, 2:]
+    # κ is drawn, and μ is then what it is with that κ.
+    curvature_var = found.covariance[:, 2, 2]
+    curved = np.sqrt(curvature_var) * points[-1]
+    gain = found.covariance[:, :2, 2] / curvature_var[:, None]
+    of_mean = found.covariance[:, :2, :2] - gain[:, :, None] * found.covariance[:, None, 2, :2]
+    common = found.mean[:, 3:]
     mean = weights @ common
-    variance = np.diagonal(found.covariance, axis1=1, axis2=2)[:, 2:]
+    variance = np.diagonal(found.covariance, axis1=1, axis2=2)[:, 3:]
     spread = weights @ (variance + (common - mean) ** 2)
     return Population(
         cracks=len(s.times),
         reference=reference,
         weights=weights,
-        mean=found.mean[:, :2],
-        covariance=_between(spreads) + found.covariance[:, :2, :2],
+        mean=found.mean[:, :2] + gain * curved[:, None],
+        covariance=_between(spreads) + of_mean,
+        curvature=found.mean[:, 2] + curved,
         wander_sd=np.exp(spreads[3]),
         wander_span=np.exp(spreads[4]) * scales.span,
         error_sd=np.exp(spreads[5]) * scales.step * reference,

@@ -2,6 +2,8 @@
 tests.benchmarks.growth_history``.
 
 ``predict`` is the forecast by size alone of ``assessment.forecast``, with sizes recorded in steps.
+Some of its priors were revised with this table in view (``assessment/forecast/priors.py``): scores
+on other cracks may be worse.
 """
 
 import sys
