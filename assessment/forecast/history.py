@@ -9,6 +9,7 @@ posterior; wander is integrated by the Kalman filter of ``wander`` and drawn onl
 from dataclasses import dataclass
 
 import numpy as np
+from scipy.special import ndtri
 from scipy.stats import chi2
 
 from assessment.validity import Floats
@@ -18,7 +19,7 @@ from .outline import Readings, first_guess, fitted, rates_at, readings, sizes_at
 from .points import effective_size, normals, quantiles, systematic, uniforms, weights_of
 from .population import Population, curved_lead
 from .rate_law import curvature_lead, rate_at, size_after, time_between
-from .wander import State, advance, ahead, clock_covariance, drawn, measured, start
+from .wander import State, advance, ahead, clock_covariance, drawn, measured, start, time_through
 
 SAMPLES = 4096
 _SEED = 3
@@ -151,7 +152,7 @@ def _weighted(
     log_prior = -0.5 * (np.einsum("ni,nij,nj->n", off, precision[chosen], off) + log_det[chosen])
     logs = log_prior + state.log_likelihood - log_proposal - normal.log_evidence[chosen]
     weights = weights_of(logs)
-    lead, wander = drawn(state, *normals(samples, 6, seed + 1)[4:])
+    lead, wander = drawn(state, *normals(samples, 2, seed + 1))
     return Trend(
         reference=held.reference,
         first=float(data.times[0, 0]),
@@ -175,11 +176,8 @@ def _proposed(
     normal: _Normals, chosen: np.ndarray[tuple[int], np.dtype[np.intp]], samples: int, seed: int
 ) -> tuple[Floats, Floats]:
     """Student t about each draw's normal, and its log density up to a constant."""
-    # A draw's samples would lie in one corner of the points if both went in the same order.
-    order = np.random.default_rng(seed).permutation(samples)
-    points = normals(samples, 3, seed)[:, order]
-    stretch = np.sqrt(_FREEDOM / chi2.ppf(uniforms(samples, 4, seed)[3, order], _FREEDOM))
-    student = points * stretch
+    points = uniforms(samples, 4, seed)
+    student = ndtri(points[:3]) * np.sqrt(_FREEDOM / chi2.ppf(points[3], _FREEDOM))
     root = _WIDER * normal.root[chosen]
     path = normal.mean[chosen] + np.einsum("nij,jn->ni", root, student)
     log_det = np.sum(np.log(np.diagonal(root, axis1=1, axis2=2)), axis=1)
@@ -254,33 +252,15 @@ def recorded_ahead(one: Trend, times: Floats) -> Floats:
 
 def times_to(one: Trend, size: float) -> Floats:
     """Times at which ``size`` is reached, for each sample; the last reading's where it is already
-    beyond, infinite where it is not reached in a hundred times its nominal way."""
+    beyond."""
     log_rate, exponent, start_size = one.path[0], one.path[1], np.exp(one.path[2])
     end = np.asarray(size / one.reference)
     goal = time_between(start_size, end, log_rate, exponent)
     goal = goal - curvature_lead(start_size, end, log_rate, exponent, one.curvature)
     clock = one.last - one.first + one.lead
-    way = np.maximum(goal - clock, 0.0)
-    # Two in three steps fall inside the nominal way; what wanders more slowly goes on as it was.
-    part = 1.5 * way / _STEPS_TO_SIZE
     noise = normals(one.samples, _STEPS_TO_SIZE, 9)
-    leads, wanders = ahead(one.lead, one.wander, part, one.wander_sd, one.wander_span, noise)
-    return one.last + _first_passage(way, part, leads - leads[0], wanders, one.wander_sd)
-
-
-def _first_passage(way: Floats, part: Floats, leads: Floats, wanders: Floats, sd: Floats) -> Floats:
-    """Time for the clock to go ``way``, by straight lines between its steps."""
-    gone = np.arange(len(leads))[:, None] * part + leads
-    past = np.vstack([gone >= way, np.ones_like(way, dtype=bool)])
-    after = np.argmax(past, axis=0)
-    rows = np.arange(len(way))
-    low = np.clip(after - 1, 0, len(gone) - 2)
-    step = gone[low + 1, rows] - gone[low, rows]
-    share = np.divide(way - gone[low, rows], step, out=np.zeros_like(way), where=step > 0.0)
-    within = (low + share) * part
-    speed = np.exp(wanders[-1] - 0.5 * np.square(sd))
-    beyond = (len(gone) - 1) * part + (way - gone[-1]) / speed
-    return np.where(after >= len(gone), beyond, np.where(way > 0.0, within, 0.0))
+    took = time_through(goal - clock, one.wander, one.wander_sd, one.wander_span, noise)
+    return np.asarray(one.last + took)
 
 
 def size_quantiles(one: Trend, sizes: Floats, levels: Floats) -> Floats:

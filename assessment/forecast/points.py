@@ -19,8 +19,11 @@ def uniforms(count: int, dimensions: int, seed: int) -> Floats:
     """
     if count < 1 or count & (count - 1):
         raise ValueError(f"the number of samples is a power of two, not {count}")
-    made = qmc.Sobol(dimensions, scramble=True, rng=np.random.default_rng(seed))
-    points: Floats = made.random_base2(count.bit_length() - 1).T
+    rng = np.random.default_rng(seed)
+    made = qmc.Sobol(dimensions, scramble=True, rng=rng)
+    # Two scramblings of one sequence still run alike, so that samples of two calls would depend on
+    # each other; in a shuffled order they do not.
+    points: Floats = rng.permutation(made.random_base2(count.bit_length() - 1)).T
     return np.asarray(points * (1.0 - 2.0 * _EDGE) + _EDGE)
 
 

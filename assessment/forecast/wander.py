@@ -142,3 +142,31 @@ def ahead(
         leads.append(leads[-1] + time * (mean - 1.0))
         wanders.append(new)
     return np.array(leads), np.array(wanders)
+
+
+def time_through(
+    way: Floats, w: Floats, sd: Floats | float, span: Floats | float, noise: Floats
+) -> Floats:
+    """Time in which the clock goes ``way``, from a wander of w now.
+
+    way : on the nominal clock, (samples,); nil or less takes no time, infinite takes for ever
+    noise : standard normals, (steps, samples); two in three steps fall inside the nominal way, and
+    what wanders more slowly goes on as it was at the last.
+    """
+    goes = (way > 0.0) & np.isfinite(way)
+    far = np.where(goes, way, 1.0)
+    part = 1.5 * far / len(noise)
+    leads, wanders = ahead(np.zeros_like(far), w, part, sd, span, noise)
+    gone = np.arange(len(leads))[:, None] * part + leads
+    past = np.vstack([gone >= far, np.ones_like(far, dtype=bool)])
+    after = np.argmax(past, axis=0)
+    rows = np.arange(len(far))
+    low = np.clip(after - 1, 0, len(gone) - 2)
+    step = gone[low + 1, rows] - gone[low, rows]
+    share = np.divide(far - gone[low, rows], step, out=np.zeros_like(far), where=step > 0.0)
+    speed = np.exp(wanders[-1] - 0.5 * np.square(sd))
+    # A speed of nil is a wander beyond all bounds; it then takes for ever.
+    with np.errstate(divide="ignore"):
+        beyond = (len(gone) - 1) * part + (far - gone[-1]) / speed
+    time = np.where(after >= len(gone), beyond, (low + share) * part)
+    return np.where(goes, time, np.where(way > 0.0, np.inf, 0.0))
