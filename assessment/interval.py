@@ -113,33 +113,61 @@ def round_down(reading: float) -> float:
     return math.floor(reading * 1000.0) / 1000.0 if abs(reading) < 1e12 else reading
 
 
-def rules(case: Case, life_usage: float | None, why_no_life: str | None) -> tuple[Rule, ...]:
+@dataclass(frozen=True)
+class Ahead:
+    """What the forecast says to the rules.
+
+    remaining : usage at which the probability of failure reaches the target; None where ``why_not``
+    measured_growth : how the measured growth lies against the basis, in words
+    """
+
+    remaining: float | None
+    why_not: str | None
+    measured_growth: str
+
+
+def rules(
+    case: Case, life_usage: float | None, why_no_life: str | None, ahead: Ahead | None = None
+) -> tuple[Rule, ...]:
     """All rules in their order. ``life_usage`` is the bounding life in usage from the last look."""
     return (
         _life(case, life_usage, why_no_life),
-        Rule(FORECAST, why_not=NOT_COMPUTED),
+        _forecast(case, ahead),
         Rule(DETECTABILITY, why_not=NOT_COMPUTED),
         _longest(case),
         _fixed(case),
-        Rule(MEASURED_GROWTH, why_not=NOT_COMPUTED),
+        Rule(MEASURED_GROWTH, why_not=NOT_COMPUTED if ahead is None else ahead.measured_growth),
     )
 
 
+def _forecast(case: Case, ahead: Ahead | None) -> Rule:
+    if ahead is None:
+        return Rule(FORECAST, why_not="no crack was measured")
+    if ahead.remaining is None:
+        return Rule(FORECAST, why_not=ahead.why_not)
+    return _after(FORECAST, case, ahead.remaining)
+
+
+def _after(name: str, case: Case, remaining: float) -> Rule:
+    """The rule that ends with so much usage from the last look."""
+    usage, per_day = case.usage, rate(case.usage)
+    if usage.at is None:
+        return Rule(name, why_not="usage.at is missing")
+    reading = round_down(usage.at + remaining)
+    if usage.on is None or per_day is None:
+        return Rule(name, usage=reading, why_not="no date: usage.on or usage.per_day is missing")
+    on = date_of(remaining, per_day.per_day, usage.on)
+    why_not = None if on else "no date: it lies beyond the year 9999"
+    return Rule(name, usage=reading, on=on, why_not=why_not)
+
+
 def _life(case: Case, life_usage: float | None, why_no_life: str | None) -> Rule:
-    factor, usage, per_day = case.criteria.life_factor, case.usage, rate(case.usage)
+    factor = case.criteria.life_factor
     if life_usage is None:
         return Rule(LIFE, why_not=why_no_life)
     if factor is None:
         return Rule(LIFE, why_not="criteria.life_factor is missing")
-    if usage.at is None:
-        return Rule(LIFE, why_not="usage.at is missing")
-    remaining = life_usage / factor
-    reading = round_down(usage.at + remaining)
-    if usage.on is None or per_day is None:
-        return Rule(LIFE, usage=reading, why_not="no date: usage.on or usage.per_day is missing")
-    on = date_of(remaining, per_day.per_day, usage.on)
-    why_not = None if on else "no date: it lies beyond the year 9999"
-    return Rule(LIFE, usage=reading, on=on, why_not=why_not)
+    return _after(LIFE, case, life_usage / factor)
 
 
 def _longest(case: Case) -> Rule:

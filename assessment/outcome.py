@@ -6,7 +6,9 @@ criterion          what failure was judged by: "toughness" or "diagram"
 failure            also reference_stress_mpa, cause, criterion, why_not
 bounding.kind      the kind it is assessed as; bounding.became_through; bounding.lacks: keys that
                    are missing, with best-estimate values in their place
-rules              also "growth measured …" (row 3 of the table), which is not computed yet
+forecast           also date_quantiles, failure_by, bands, growth (measured against the basis),
+                   history (what was weighed, outliers, what was left out), or why_not
+rules              also "growth measured …" (row 3 of the table)
 rate               usage per day behind the dates, and how it came about
 restriction        null, or {"factor", "peak": {…}, "words"} where a reduced load restores reserve
 life.beyond        null, or where the life ends by break-through: what the crack becomes then, each
@@ -20,6 +22,7 @@ disposition        also conditions, and before_return (repair before return to s
 figures            what the plots need: diagram (limit curve and points), growth (paths)
 """
 
+import datetime
 from collections.abc import Mapping
 from typing import Any
 
@@ -30,8 +33,9 @@ from assessment.document.case import Case
 from assessment.engine import ENGINE
 from assessment.estimate import Estimate, Look, arrays, loads_for
 from assessment.failure import Point, diagram_of, limit_curve
+from assessment.forecast.report import reported
 from assessment.interaction import INTERACTION, Combined
-from assessment.interval import Next, Rule, rate
+from assessment.interval import Next, Rule, date_of, rate
 from assessment.leak import Leak
 from assessment.lifetime import Critical, LifeFound, growth_now
 from assessment.procedure import Found
@@ -53,7 +57,7 @@ def outcome_of(case: Case, found: Found) -> dict[str, Any]:
         "growth_now": growth_now(found.best_look, found.best.corner),
         "life": {**_life(found.best_life), "beyond": _beyond(found.best_beyond)},
         "bounding": _bounding(case, found),
-        "forecast": None,
+        "forecast": _forecast(case, found),
         "rules": [_rule(one) for one in found.rules],
         "rate": _rate(case),
         "next_inspection": _next(found.next),
@@ -211,6 +215,18 @@ def _rule(one: Rule) -> dict[str, Any]:
         "on": None if one.on is None else one.on.isoformat(),
         "why_not": one.why_not,
     }
+
+
+def _forecast(case: Case, found: Found) -> dict[str, Any] | None:
+    per_day, start = rate(case.usage), case.usage.on
+
+    def on(remaining: float) -> datetime.date | None:
+        return (
+            None if per_day is None or start is None else date_of(remaining, per_day.per_day, start)
+        )
+
+    outlook = None if found.seen is None else found.seen.outlook
+    return reported(case, found.best.corner, outlook, on)
 
 
 def _rate(case: Case) -> dict[str, Any] | None:

@@ -21,6 +21,7 @@ from assessment.estimate import (
     fracture_for,
     toughness_of,
 )
+from assessment.foresight import Foresight, foresight, growth_to_go_by
 from assessment.interval import Next, Rule, governing, rules
 from assessment.leak import THROUGH_NOW, Leak, leak_before_break, leaks_now
 from assessment.lifetime import Critical, LifeFound, critical, life
@@ -65,6 +66,7 @@ class Found:
     stop: StopSizes
     marks: tuple[Mark, ...]
     leak: Leak | None
+    seen: Foresight | None = None
 
 
 def assess(document: str | bytes | dict[str, Any]) -> dict[str, Any]:
@@ -98,7 +100,9 @@ def compute(case: Case) -> Found:
     best = estimate(best_look, best_corner)
     best_life = life(best_look, best_corner)
     bounding_toughness, bounding_needs = _bounding_toughness(case, toughness)
+    seen = foresight(case, best_look, best_corner, best_life.usage)
     look = _bounding_look(case, best_look, bounding_toughness)
+    look = growth_to_go_by(look, best_corner, best_look, seen)
     # An assumed size is what could have been missed: it has no sizing error on top.
     measured = case.crack if case.crack.found else replace(case.crack, sizing=None)
     sizes = corners(measured, case.body, case.criteria.size_confidence_sd or 0.0)
@@ -109,7 +113,7 @@ def compute(case: Case) -> Found:
     lacks = _lacks(case, bounding_needs)
 
     def days_of(one: Bounding) -> int | None:
-        following = governing(case, _rules(case, one, lacks))
+        following = governing(case, _rules(case, one, lacks, seen))
         return None if following is None else following.days
 
     reduced, why_none = (
@@ -117,15 +121,16 @@ def compute(case: Case) -> Found:
         if case.crack.found and _short(case, decides)
         else (None, "")
     )
-    full_rules = _rules(case, decides, lacks)
-    in_force = full_rules if reduced is None else _rules(case, reduced.bounding, lacks)
+    full_rules = _rules(case, decides, lacks, seen)
+    in_force = full_rules if reduced is None else _rules(case, reduced.bounding, lacks, seen)
     row_two = (
         *needs(case),
         *(one.sentence() for one in bounding_needs),
         *_outside(case, decides, bounding_toughness),
         *_unconverged(decides),
+        *(seen.needs if seen else ()),
     )
-    decision = _decide(case, decides, row_two, reduced, why_none, full_rules, in_force)
+    decision = _decide(case, decides, row_two, reduced, why_none, full_rules, in_force, seen)
     return Found(
         best_look=best_look,
         best_toughness=toughness,
@@ -146,6 +151,7 @@ def compute(case: Case) -> Found:
         else stop_sizes(case, look, lacks, bool(decides.outside)),
         marks=(*best.marks, *toughness.marks),
         leak=leak_before_break(case, look, decides.corner, decides.life),
+        seen=seen,
     )
 
 
@@ -186,10 +192,14 @@ def _lacks(case: Case, also: tuple[Missing, ...]) -> tuple[str, ...]:
     )
 
 
-def _rules(case: Case, decides: Bounding, lacks: tuple[str, ...]) -> tuple[Rule, ...]:
+def _rules(
+    case: Case, decides: Bounding, lacks: tuple[str, ...], seen: Foresight | None
+) -> tuple[Rule, ...]:
+    # The forecast is of the full load, also where a reduced one is looked at: no credit for that.
+    ahead = None if seen is None else seen.ahead
     if lacks:
-        return rules(case, None, f"what it needs is missing: {', '.join(lacks)}")
-    return rules(case, decides.life.usage, decides.life.why)
+        return rules(case, None, f"what it needs is missing: {', '.join(lacks)}", ahead)
+    return rules(case, decides.life.usage, decides.life.why, ahead)
 
 
 def _short(case: Case, decides: Bounding) -> bool:
@@ -219,6 +229,7 @@ def _decide(
     why_no_restriction: str,
     full_rules: tuple[Rule, ...],
     in_force: tuple[Rule, ...],
+    seen: Foresight | None,
 ) -> Decision:
     criteria = case.criteria
     if not case.crack.found:
@@ -252,6 +263,9 @@ def _decide(
             interval=governing(case, full_rules),
             shortest=criteria.shortest_interval_days,
             longest=criteria.longest_interval_days,
+            failing=None if seen is None else seen.failing,
+            grew_faster=None if seen is None else seen.grew_faster,
+            faster_words="" if seen is None else seen.faster_words,
         )
     )
 

@@ -7,8 +7,9 @@ loaded fully meanwhile. A fact that could not be found is never taken as favoura
 refer, which is treated as withdraw until an engineer has decided.
 
 One thing is added to the tables: where as_of has reached the date or reading that the rules give,
-the look that they ask for has not taken place, and the verdict is at least refer. Row 3 and the
-probability in row 1 need the forecast, which is not computed yet; nothing is eased by that.
+the look that they ask for has not taken place, and the verdict is at least refer. Where growth
+could not be judged against the basis, a second time of row 3 is not ruled out; nothing is eased by
+that.
 """
 
 from collections.abc import Iterator
@@ -42,6 +43,9 @@ class CrackFacts:
     why_no_restriction : why there is none
     interval : the governing interval at the full load
     shortest, longest : criteria, in days
+    failing : the probability of having failed by now is at or above the target, in words; else None
+    grew_faster : growth is faster than the basis explains; None where it could not be judged
+    faster_words : that, in words
     """
 
     acceptable: bool | None
@@ -55,6 +59,9 @@ class CrackFacts:
     interval: Next | None
     shortest: float | None
     longest: float | None
+    failing: str | None = None
+    grew_faster: bool | None = None
+    faster_words: str = ""
 
 
 @dataclass(frozen=True)
@@ -122,20 +129,32 @@ def _crack_rows(facts: CrackFacts) -> Iterator[_Row]:
     interval = facts.interval if facts.restriction is None else facts.restriction.interval
     if facts.acceptable is False:
         yield _Row(1, "withdraw", facts.why_not_acceptable)
+    if facts.failing is not None:
+        yield _Row(1, "withdraw", facts.failing)
     for need in facts.needs:
         yield _Row(2, "refer", need)
     if facts.acceptable is None and not facts.needs:
         yield _Row(2, "refer", "Whether the bounding crack is acceptable could not be computed.")
-    if facts.grew_faster_before:
-        # Whether it grew faster again is not computed, so a second time is not ruled out.
+    yield from _growth_rows(facts)
+    yield from _reserve_rows(facts)
+    yield from _interval_rows(interval, facts.shortest, facts.longest)
+
+
+def _growth_rows(facts: CrackFacts) -> Iterator[_Row]:
+    before = "At the last assessment too the crack had grown faster than its basis explains."
+    if facts.grew_faster and facts.grew_faster_before:
+        yield _Row(3, "refer", f"{facts.faster_words} {before}")
+    elif facts.grew_faster:
+        # At best watch: the rows in between may be stricter, and continue gives way.
+        yield _Row(7, "watch", facts.faster_words)
+    elif facts.grew_faster is None and facts.grew_faster_before:
+        # Whether it grew faster again could not be judged, so a second time is not ruled out.
         yield _Row(
             3,
             "refer",
             "At the last assessment the crack had grown faster than its basis explains; "
-            "whether it did so again is not computed yet.",
+            "whether it did so again could not be judged.",
         )
-    yield from _reserve_rows(facts)
-    yield from _interval_rows(interval, facts.shortest, facts.longest)
 
 
 def _reserve_rows(facts: CrackFacts) -> Iterator[_Row]:

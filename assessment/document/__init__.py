@@ -12,11 +12,11 @@ import numpy as np
 from assessment.document.case import Case, Crack, Criteria, Loading, Material, Missing
 from assessment.document.crack import read_body, read_crack
 from assessment.document.criteria import (
-    check_uncertainty,
     read_criteria,
     read_detection,
     read_owner,
     read_shortfalls,
+    read_uncertainty,
 )
 from assessment.document.fields import Fields
 from assessment.document.loading import read_loading
@@ -69,7 +69,6 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
     usage = read_usage(value("usage"), missing)
     criteria = read_criteria(value("criteria"), missing)
     material = _drawn(material, criteria)
-    check_uncertainty(value("uncertainty"))
     detection = read_detection(value("detection"))
     if not crack.found and detection is None:
         missing.append(Missing("detection.a90_95_mm", "what the method finds is missing."))
@@ -89,6 +88,8 @@ def read_case(document: str | bytes | dict[str, Any]) -> Case:
         previous=read_previous(value("previous")),
         shortfalls=read_shortfalls(value("look")),
         missing=tuple(missing),
+        uncertainty=read_uncertainty(value("uncertainty")),
+        seed=int(value("seed") or 0),
     )
 
 

@@ -168,6 +168,18 @@ class Detection:
 
 
 @dataclass(frozen=True)
+class Uncertainty:
+    """For the forecast: sd of log10 C and of m, their correlation, scatter of toughness and stress
+    as sd over mean; None where the document does not say."""
+
+    log10_c_sd: float | None
+    m_sd: float | None
+    c_m_correlation: float | None
+    toughness_cov: float | None
+    stress_cov: float | None
+
+
+@dataclass(frozen=True)
 class Look:
     """One earlier look. Sizes in m, None where not measured."""
 
@@ -206,3 +218,5 @@ class Case:
     previous: Previous | None
     shortfalls: tuple[str, ...]
     missing: tuple[Missing, ...] = field(default=())
+    uncertainty: Uncertainty | None = None
+    seed: int = 0

@@ -2,7 +2,14 @@
 
 from typing import Any
 
-from assessment.document.case import Criteria, Detection, FixedDate, Missing, Owner
+from assessment.document.case import (
+    Criteria,
+    Detection,
+    FixedDate,
+    Missing,
+    Owner,
+    Uncertainty,
+)
 from assessment.document.crack import MM
 from assessment.document.fields import Fields, named
 from assessment.document.refusal import CaseRefused
@@ -60,18 +67,19 @@ def read_owner(value: Any) -> Owner:
     )
 
 
-def check_uncertainty(value: Any) -> bool:
-    """True where the section is there; its numbers wait for the forecast, but must be sound."""
+def read_uncertainty(value: Any) -> Uncertainty | None:
+    """What the forecast scatters by; None where the section is left out."""
     if value is None:
-        return False
+        return None
     keys = ("log10_c_sd", "m_sd", "c_m_correlation", "toughness_cov", "stress_cov")
     fields = Fields("uncertainty", value, keys)
-    for key in keys:
-        if key == "c_m_correlation":
-            fields.number_or_none(key, least=-1.0, most=1.0)
-        else:
-            fields.number_or_none(key, least=0.0)
-    return True
+    return Uncertainty(
+        log10_c_sd=fields.number_or_none("log10_c_sd", least=0.0),
+        m_sd=fields.number_or_none("m_sd", least=0.0),
+        c_m_correlation=fields.number_or_none("c_m_correlation", least=-1.0, most=1.0),
+        toughness_cov=fields.number_or_none("toughness_cov", least=0.0),
+        stress_cov=fields.number_or_none("stress_cov", least=0.0),
+    )
 
 
 def read_detection(value: Any) -> Detection | None:

@@ -79,7 +79,7 @@ def test_all_rules_are_listed_with_why_not():
     found = {one.rule: one for one in rules(case, 1000.0, None)}
     assert found[LIFE].usage == 1250 + 500
     assert found[LONGEST].on == START + datetime.timedelta(days=365)
-    assert found[FORECAST].why_not == "not computed yet"
+    assert found[FORECAST].why_not == "no crack was measured"
     assert found[FIXED].why_not
     assert len(found) == 6
     assert all(one.on or one.why_not for one in found.values())

@@ -96,7 +96,7 @@ def test_the_diagram_carries_its_curve_and_both_points():
         ({"look": {"shortfalls": ["calibration expired 2026-04-01"]}}, "calibration expired"),
         ({"previous": {"until": {"on": "2026-05-03"}}}, "2026-05-03"),
         ({"previous": {"until": {"at": 1249}}}, "1249"),
-        ({"previous": {"grew_faster": True}}, "not computed yet"),
+        ({"previous": {"grew_faster": True}}, "could not be judged"),
         ({"history": [{"on": "2026-01-01", "depth_mm": 4.0}]}, "crack.why_smaller"),
     ],
 )

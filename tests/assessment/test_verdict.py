@@ -148,3 +148,24 @@ def test_one_fact_made_worse_never_eases_the_verdict(facts):
     if facts.longest is not None:
         worse.append(replace(facts, longest=facts.longest * 2))
     assert all(strictness(one) >= now for one in worse)
+
+
+FASTER = replace(GOOD, grew_faster=True, faster_words="It grew faster than its basis explains.")
+
+
+def test_growth_faster_than_the_basis_is_at_best_watch_and_then_refer() -> None:
+    first = decide_crack(FASTER)
+    assert first.verdict == "watch" and FASTER.faster_words in first.reasons
+    assert decide_crack(replace(FASTER, interval=interval(13))).verdict == "repair"
+    again = decide_crack(replace(FASTER, grew_faster_before=True))
+    assert again.verdict == "refer" and "too" in again.reasons[0]
+    # Judged and found to be as the basis explains: the earlier time no longer counts.
+    eased = decide_crack(replace(GOOD, grew_faster=False, grew_faster_before=True))
+    assert eased.verdict == "continue"
+    unjudged = decide_crack(replace(GOOD, grew_faster=None, grew_faster_before=True))
+    assert unjudged.verdict == "refer" and "could not be judged" in unjudged.reasons[0]
+
+
+def test_a_probability_of_failure_at_the_target_is_withdrawn() -> None:
+    failing = decide_crack(replace(GOOD, failing="The probability is already 1 in 100."))
+    assert failing.verdict == "withdraw" and failing.reasons[0].startswith("The probability")
