@@ -16,6 +16,9 @@ from assessment.document.refusal import CaseRefused
 _DATE = re.compile(r"\d{4}-\d{2}-\d{2}")
 _NONE = re.compile(r"none:\s*\S", re.IGNORECASE)
 
+# Far above any size, stress, count or counter of this trade; squares of it are still finite.
+LARGEST = 1e15
+
 
 class Fields:
     """One object of the document at ``where``, with the keys it may hold."""
@@ -150,6 +153,9 @@ def as_number(value: Any, where: str) -> float:
         raise CaseRefused(where, f"a number is needed here, not {named(value)}.")
     if not is_finite(value):
         raise CaseRefused(where, "this number is not finite.")
+    if abs(value) > LARGEST:
+        why = f"{value:.4g} is larger than any quantity here: check the decimal point and the unit."
+        raise CaseRefused(where, why)
     return float(value)
 
 

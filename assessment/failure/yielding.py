@@ -28,7 +28,8 @@ SMALL_PART = 0.1
 
 def plane_strain_thickness(k: float, yield_strength: float) -> float:
     """m; 2.5 (K/σ_Y)². k : MPa√m; yield_strength : MPa"""
-    return 2.5 * (k / yield_strength) ** 2
+    ratio = k / yield_strength
+    return 2.5 * ratio * ratio
 
 
 def plastic_zone(k: float, yield_strength: float, plane: str) -> float:
@@ -37,4 +38,5 @@ def plastic_zone(k: float, yield_strength: float, plane: str) -> float:
     Raises KeyError for another word.
     """
     part = {"stress": 1.0, "strain": 1.0 / 3.0}[plane]
-    return part / math.pi * (k / yield_strength) ** 2
+    ratio = k / yield_strength
+    return part / math.pi * ratio * ratio
