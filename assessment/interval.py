@@ -126,14 +126,27 @@ class Ahead:
     measured_growth: str
 
 
+@dataclass(frozen=True)
+class FromMissed:
+    """Bounding life in usage from the size that the last method could miss, or why there is
+    none."""
+
+    usage: float | None
+    why_not: str | None
+
+
 def rules(
-    case: Case, life_usage: float | None, why_no_life: str | None, ahead: Ahead | None = None
+    case: Case,
+    life_usage: float | None,
+    why_no_life: str | None,
+    ahead: Ahead | None = None,
+    missed: FromMissed | None = None,
 ) -> tuple[Rule, ...]:
     """All rules in their order. ``life_usage`` is the bounding life in usage from the last look."""
     return (
         _life(case, life_usage, why_no_life),
         _forecast(case, ahead),
-        Rule(DETECTABILITY, why_not=NOT_COMPUTED),
+        _detectability(case, missed),
         _longest(case),
         _fixed(case),
         Rule(MEASURED_GROWTH, why_not=NOT_COMPUTED if ahead is None else ahead.measured_growth),
@@ -146,6 +159,16 @@ def _forecast(case: Case, ahead: Ahead | None) -> Rule:
     if ahead.remaining is None:
         return Rule(FORECAST, why_not=ahead.why_not)
     return _after(FORECAST, case, ahead.remaining)
+
+
+def _detectability(case: Case, missed: FromMissed | None) -> Rule:
+    if missed is None:
+        return Rule(DETECTABILITY, why_not=NOT_COMPUTED)
+    if missed.usage is None:
+        return Rule(DETECTABILITY, why_not=missed.why_not)
+    if case.criteria.life_factor is None:
+        return Rule(DETECTABILITY, why_not="criteria.life_factor is missing")
+    return _after(DETECTABILITY, case, missed.usage / case.criteria.life_factor)
 
 
 def _after(name: str, case: Case, remaining: float) -> Rule:

@@ -10,6 +10,7 @@ import numpy as np
 
 from assessment.bounding import Bounding, bounding
 from assessment.corners import corners, in_mm, sizes_to_corner
+from assessment.detectability import from_missed
 from assessment.document import Case, CaseRefused, read_case
 from assessment.document.case import Missing
 from assessment.document.writing import settled
@@ -22,7 +23,7 @@ from assessment.estimate import (
     toughness_of,
 )
 from assessment.foresight import Foresight, foresight, growth_to_go_by
-from assessment.interval import Next, Rule, governing, rules
+from assessment.interval import FromMissed, Next, Rule, governing, rules
 from assessment.leak import THROUGH_NOW, Leak, leak_before_break, leaks_now
 from assessment.lifetime import Critical, LifeFound, critical, life
 from assessment.needs import needs
@@ -103,6 +104,7 @@ def compute(case: Case) -> Found:
     seen = foresight(case, best_look, best_corner, best_life.usage)
     look = _bounding_look(case, best_look, bounding_toughness)
     look = growth_to_go_by(look, best_corner, best_look, seen)
+    missed = from_missed(case, look)
     # An assumed size is what could have been missed: it has no sizing error on top.
     measured = case.crack if case.crack.found else replace(case.crack, sizing=None)
     sizes = corners(measured, case.body, case.criteria.size_confidence_sd or 0.0)
@@ -113,7 +115,7 @@ def compute(case: Case) -> Found:
     lacks = _lacks(case, bounding_needs)
 
     def days_of(one: Bounding) -> int | None:
-        following = governing(case, _rules(case, one, lacks, seen))
+        following = governing(case, _rules(case, one, lacks, seen, missed))
         return None if following is None else following.days
 
     reduced, why_none = (
@@ -121,8 +123,10 @@ def compute(case: Case) -> Found:
         if case.crack.found and _short(case, decides)
         else (None, "")
     )
-    full_rules = _rules(case, decides, lacks, seen)
-    in_force = full_rules if reduced is None else _rules(case, reduced.bounding, lacks, seen)
+    full_rules = _rules(case, decides, lacks, seen, missed)
+    in_force = (
+        full_rules if reduced is None else _rules(case, reduced.bounding, lacks, seen, missed)
+    )
     row_two = (
         *needs(case),
         *(one.sentence() for one in bounding_needs),
@@ -193,13 +197,19 @@ def _lacks(case: Case, also: tuple[Missing, ...]) -> tuple[str, ...]:
 
 
 def _rules(
-    case: Case, decides: Bounding, lacks: tuple[str, ...], seen: Foresight | None
+    case: Case,
+    decides: Bounding,
+    lacks: tuple[str, ...],
+    seen: Foresight | None,
+    missed: FromMissed,
 ) -> tuple[Rule, ...]:
-    # The forecast is of the full load, also where a reduced one is looked at: no credit for that.
+    # Forecast and detectability are of the full load, also where a reduced one is looked at: no
+    # credit is taken for that.
     ahead = None if seen is None else seen.ahead
     if lacks:
-        return rules(case, None, f"what it needs is missing: {', '.join(lacks)}", ahead)
-    return rules(case, decides.life.usage, decides.life.why, ahead)
+        why = f"what it needs is missing: {', '.join(lacks)}"
+        return rules(case, None, why, ahead, FromMissed(None, why))
+    return rules(case, decides.life.usage, decides.life.why, ahead, missed)
 
 
 def _short(case: Case, decides: Bounding) -> bool:
