@@ -7,7 +7,7 @@ from typing import Any
 from .diagram import DiagramStory
 from .layers import Point
 from .section import SectionStory
-from .size_usage import Look, RuleMark, SizeStory
+from .size_usage import Band, Look, RuleMark, SizeStory
 
 Document = Mapping[str, Any]
 
@@ -86,9 +86,31 @@ def size_story(
         next_on=next_on,
         signed=signed,
         rules=rule_marks(case, outcome),
+        bands=_bands(outcome.get("forecast"), of, start),
         no_growth_why="" if worst else no_growth_why,
         decimal_sign=decimal_sign,
     )
+
+
+# What a band is called: the part of all cracks like this one that it holds, the wider first.
+BANDS = (("90", "9 in 10 such cracks"), ("50", "half of such cracks"))
+
+
+def _bands(forecast: Document | None, of: str, start: float | None) -> tuple[Band, ...]:
+    rows = (forecast or {}).get("bands") or ()
+    if start is None:
+        return ()
+    found = []
+    for level, label in BANDS:
+        edges = tuple(
+            (start + float(row["usage"]), float(low), float(high))
+            for row in rows
+            if row.get(f"{of}_mm")
+            for low, high in (row[f"{of}_mm"][level],)
+        )
+        if len(edges) > 1:
+            found.append(Band(label, edges))
+    return tuple(found)
 
 
 def rule_marks(case: Document, outcome: Document) -> tuple[RuleMark, ...]:

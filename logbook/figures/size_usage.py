@@ -589,8 +589,9 @@ def _put_growth_words(story: SizeStory, plan: Plan) -> None:
         if len(shown) > 1:
             plan.put(text, _path_places(shown, above))
     for one in story.bands:
-        usage, _, high = one.edges[-1]
-        plan.put(one.label, [Place((min(usage, view.x[1]), high), "right", -8, -12)])
+        shown = _within(view, [(usage, high) for usage, _, high in one.edges])
+        if len(shown) > 1:
+            plan.put(one.label, _path_places(shown, True))
 
 
 def _within(view: View, points: Sequence[Point]) -> list[Point]:

@@ -15,6 +15,7 @@ from logbook.models import Assessment, Crack, Disposition, Finding, Repair, Verd
 
 from .asked import Asked, may
 from .lines import Line, finding_words
+from .outlook import outlook
 from .places import standing_line
 
 
@@ -49,6 +50,7 @@ def crack(request: Asked, pk: int) -> HttpResponse:
             "figures": figures(one, proposal, signed, sign, line),
             "shown": _shown(one, proposal),
             "working": working(proposal),
+            "outlook": outlook(outcome_of(proposal)),
             "to_measure": to_measure(proposal),
             "repairs": Repair.objects.filter(crack=one).select_related("leaf"),
             "may_log": may(request, site, "log"),

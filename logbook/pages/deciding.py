@@ -21,9 +21,10 @@ from logbook.errors import Refusal
 from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Review, Site, Verdict
 
 from .asked import Asked, may
-from .cracks import figures, working
+from .cracks import figures, outcome_of, working
 from .forms.deciding import ApproveForm, ConfirmForm, DeferForm, ReviewForm, SignForm
 from .lines import proposed_sentence, unconfirmed
+from .outlook import outlook
 from .places import standing_line
 from .refusals import attempt, form_status
 from .writing import by as by_words
@@ -87,6 +88,7 @@ def proposal(request: Asked, pk: int) -> HttpResponse:
             "may_review": may(request, place.component.site, "engineer"),
             "figures": figures(one, assessment, signed, request.user.decimal_sign) if one else (),
             "working": working(assessment),
+            "outlook": outlook(outcome_of(assessment)),
         },
         status=form_status(form),
     )
