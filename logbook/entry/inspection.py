@@ -11,6 +11,7 @@ from typing import Any, TypeVar
 from logbook.errors import invalid
 
 from . import text
+from .asked_back import asked_back, counter_asked_above
 from .draft import FindingDraft, InspectionDraft, NewLocation, Sizes
 from .known import Known, KnownCrack, KnownLocation
 
@@ -20,8 +21,6 @@ WHATS = ("nothing", "could-not-look", "known-not-seen", "crack")
 DEPTH_BASES = ("measured", "at-least", "not-measured")
 MOST_FINDINGS = 200
 MOST_PHOTOS = 20
-# A size this many times the last one (or one over it) looks like a slipped decimal point.
-SLIPPED = Decimal(5)
 # No part is a kilometre long, and the book has no room for more digits.
 TOO_LARGE_MM = Decimal(1_000_000)
 NEW = "new"
@@ -149,10 +148,6 @@ def _check_counter(r: _Reader, head: dict[str, Any], known: Known) -> None:
         )
 
 
-# A reading this many times what the days since the last one explain looks like a slipped digit.
-JUMP = Decimal(20)
-
-
 def _check_jump(r: _Reader, head: dict[str, Any], known: Known) -> None:
     """A leap of the counter is asked back once: it would put every place out of use."""
     counter, found_on, last = head["counter"], head["found_on"], known.last_counter
@@ -160,8 +155,8 @@ def _check_jump(r: _Reader, head: dict[str, Any], known: Known) -> None:
         return
     if known.per_day is None or known.last_found_on is None:
         return
-    days = max((found_on - known.last_found_on).days, 0) + 30
-    explained = last + JUMP * days * known.per_day
+    days = (found_on - known.last_found_on).days
+    explained = counter_asked_above(last, known.per_day, days)
     if counter > explained and r.data.get("confirm_counter") not in CONFIRMED:
         r.complain(
             "counter",
@@ -381,15 +376,14 @@ def _check_history(
         return
     field = f"{name}_mm"
     was, said = f"{old.normalize():f} mm", f"{new.normalize():f} mm"
-    if (new >= old * SLIPPED or new * SLIPPED <= old) and not confirmed:
+    limits = asked_back(old, sd)
+    if (new >= limits.at_least_mm or new <= limits.at_most_mm) and not confirmed:
         r.complain(
             field,
             f"Last time the {name} was {was}, and now {said}. Check the decimal point. If it is "
             "right, tick “this size is right”.",
         )
-    # Two sizes differ by chance by up to about twice the square root of two of their own error.
-    allowed = Decimal(0) if sd is None else sd * Decimal("2.83")
-    if new < old - allowed and not why_smaller:
+    if new < limits.shrunk_below_mm and not why_smaller:
         r.complain(
             field,
             f"Last time the {name} was {was}; a crack does not shrink. If {said} is right, say "

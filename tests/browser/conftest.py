@@ -29,18 +29,31 @@ def book(transactional_db: None) -> Book:
 @pytest.fixture
 def opened(browser: Browser, live_server: Any) -> Iterator[Callable[..., Page]]:
     """A page for one person at one width; whatever the console complains of fails the test."""
+    yield from _opener(browser, live_server, ("status of 4",))
+
+
+@pytest.fixture
+def tablet(browser: Browser, live_server: Any) -> Iterator[Callable[..., Page]]:
+    """The same, where the signal comes and goes: that the network is gone is no complaint."""
+    yield from _opener(browser, live_server, ("status of 4", "net::ERR_"))
+
+
+def _opener(
+    browser: Browser, live_server: Any, expected: tuple[str, ...]
+) -> Iterator[Callable[..., Page]]:
     contexts: list[BrowserContext] = []
     complaints: list[str] = []
 
     def open_as(name: str, width: str = "tablet", **more: Any) -> Page:
-        context = browser.new_context(base_url=live_server.url, **WIDTHS[width], **more)
+        context = browser.new_context(base_url=live_server.url, **{**WIDTHS[width], **more})
         contexts.append(context)
         page = context.new_page()
         page.on(
             "console",
             lambda said: (
                 complaints.append(said.text)
-                if said.type in ("error", "warning") and "status of 4" not in said.text
+                if said.type in ("error", "warning")
+                and not any(one in said.text for one in expected)
                 else None
             ),
         )
