@@ -15,12 +15,9 @@ from rest_framework.views import APIView
 from logbook import access
 from logbook.actions.add_photo import add_photo, photos_path
 from logbook.actions.answer import answer_now
-from logbook.actions.known import known_of
-from logbook.actions.log_inspection import log_inspection
 from logbook.actions.strike_out import strike_out
-from logbook.actions.tray import keep_in_tray
-from logbook.entry import read_inspection, text
-from logbook.errors import Refusal, invalid, not_found
+from logbook.actions.take_in import take_in
+from logbook.errors import invalid, not_found
 from logbook.models import (
     Assessment,
     AssessmentAsked,
@@ -151,50 +148,12 @@ class Inspections(generics.ListAPIView[Inspection]):
         data = request.data
         if not isinstance(data, Mapping):
             raise invalid("An entry is an object of named fields.", {})
-        component = access.component_for(_who(request), data.get("component"), "log")
-        try:
-            draft = read_inspection(data, known_of(component))
-        except Refusal as refusal:
-            again = _written_before(_who(request), data)
-            if again is not None:
-                return _answer(again, 200)
-            if request.query_params.get("keep") != "tray":
-                raise
-            item = keep_in_tray(
-                _who(request), component, str(data.get("key", "")), dict(data), refusal
-            )
-            return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
-        before = Inspection.objects.filter(key=draft.key).exists()
-        try:
-            inspection = log_inspection(_who(request), draft)
-        except Refusal as refusal:
-            if refusal.code != "crack-closed" or request.query_params.get("keep") != "tray":
-                raise
-            item = keep_in_tray(_who(request), component, str(draft.key), dict(data), refusal)
-            return Response({**refusal.as_problem(), "kept": item.pk}, status=202)
-        answer_now(inspection.leaf_id)
-        return _answer(inspection, 200 if before else 201)
-
-
-def _written_before(person: Any, data: Mapping[str, Any]) -> Inspection | None:
-    """The entry that this very content wrote before.
-
-    Read a second time, a harmless repeat can look wrong: its own size is the last one now, and
-    its own counter the last reading. The content that was kept decides.
-    """
-    try:
-        key = text.key(data.get("key"))
-    except text.Unreadable:
-        return None
-    found = Inspection.objects.filter(key=key, author=person).select_related("leaf").first()
-    if found is None:
-        return None
-    # What the entry was read against then: everything before it.
-    try:
-        draft = read_inspection(data, known_of(found.component, before=found))
-    except Refusal:
-        return None
-    return log_inspection(person, draft)
+        keep = request.query_params.get("keep") == "tray"
+        taken = take_in(_who(request), data, keep=keep)
+        if taken.refusal is not None:
+            return Response({**taken.refusal.as_problem(), "kept": taken.kept}, status=202)
+        assert taken.inspection is not None
+        return _answer(taken.inspection, 200 if taken.again else 201)
 
 
 def _answer(inspection: Inspection, status: int) -> Response:

@@ -11,6 +11,7 @@ from typing import Any, TypeVar
 from logbook.errors import invalid
 
 from . import text
+from .asked_back import asked_back
 from .draft import FindingDraft, InspectionDraft, NewLocation, Sizes
 from .known import Known, KnownCrack, KnownLocation
 
@@ -20,8 +21,6 @@ WHATS = ("nothing", "could-not-look", "known-not-seen", "crack")
 DEPTH_BASES = ("measured", "at-least", "not-measured")
 MOST_FINDINGS = 200
 MOST_PHOTOS = 20
-# A size this many times the last one (or one over it) looks like a slipped decimal point.
-SLIPPED = Decimal(5)
 # No part is a kilometre long, and the book has no room for more digits.
 TOO_LARGE_MM = Decimal(1_000_000)
 NEW = "new"
@@ -381,15 +380,14 @@ def _check_history(
         return
     field = f"{name}_mm"
     was, said = f"{old.normalize():f} mm", f"{new.normalize():f} mm"
-    if (new >= old * SLIPPED or new * SLIPPED <= old) and not confirmed:
+    limits = asked_back(old, sd)
+    if (new >= limits.at_least_mm or new <= limits.at_most_mm) and not confirmed:
         r.complain(
             field,
             f"Last time the {name} was {was}, and now {said}. Check the decimal point. If it is "
             "right, tick “this size is right”.",
         )
-    # Two sizes differ by chance by up to about twice the square root of two of their own error.
-    allowed = Decimal(0) if sd is None else sd * Decimal("2.83")
-    if new < old - allowed and not why_smaller:
+    if new < limits.shrunk_below_mm and not why_smaller:
         r.complain(
             field,
             f"Last time the {name} was {was}; a crack does not shrink. If {said} is right, say "

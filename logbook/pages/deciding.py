@@ -12,6 +12,7 @@ from django.utils.translation import gettext as _
 from logbook import access, clock
 from logbook.actions import standing as standings
 from logbook.actions.confirm_restriction import confirm_restriction
+from logbook.actions.crew_words import unconfirmed
 from logbook.actions.defer_inspection import approve_deferral, ask_deferral, latest_day
 from logbook.actions.review import must_be_newest
 from logbook.actions.review import review as review_proposal
@@ -23,7 +24,7 @@ from logbook.models import Assessment, AssessmentAsked, Disposition, Licence, Re
 from .asked import Asked, may
 from .cracks import figures, outcome_of, working
 from .forms.deciding import ApproveForm, ConfirmForm, DeferForm, ReviewForm, SignForm
-from .lines import proposed_sentence, unconfirmed
+from .lines import proposed_sentence
 from .outlook import outlook
 from .places import standing_line
 from .refusals import attempt, form_status
