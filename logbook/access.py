@@ -115,6 +115,23 @@ def component_for(person: Person, pk: Any, need: str = "see") -> Component:
     return _one(rows, "site", person, pk, need, "component")
 
 
+def site_once_for(person: Person, slug: str) -> Site:
+    """A site where the person logs or once did: to hand in what was written then."""
+    once = Membership.objects.filter(person=person, role__in=NEEDS["log"]).values("site")
+    site = Site.objects.filter(slug=slug, pk__in=once).first()
+    if site is None or not person.is_active:
+        raise not_found("site")
+    return site
+
+
+def component_of(site: Site, pk: Any) -> Component:
+    """A component of a site that the person has been let to already."""
+    try:
+        return Component.objects.select_related("site", "picture").get(pk=pk, site=site)
+    except (Component.DoesNotExist, TypeError, ValueError, OverflowError):
+        raise not_found("component") from None
+
+
 def location_for(person: Person, pk: Any, need: str = "see") -> Location:
     rows = Location.objects.select_related("component__site")
     return _one(rows, "component__site", person, pk, need, "location")

@@ -1,9 +1,11 @@
-"""Every address of the application: pages at the root, the API below /api/v1/."""
+"""Every address of the application: pages and tablet at the root, the API below /api/v1/."""
 
 from django.urls import include, path
 
 urlpatterns = [
+    path("api/v1/tablet/", include("logbook.tablet.api_urls")),
     path("api/v1/", include("logbook.api.urls")),
+    path("", include("logbook.tablet.urls")),
     path("", include("logbook.pages.urls")),
 ]
 

@@ -8,6 +8,9 @@ SLIPPED = Decimal(5)
 # Two sizes differ by chance by up to about twice the square root of two of their own error.
 BY_CHANCE = Decimal("2.83")
 
+# A reading this many times what the days since the last one explain looks like a slipped digit.
+JUMP = Decimal(20)
+
 
 @dataclass(frozen=True)
 class AskedBack:
@@ -23,3 +26,11 @@ def asked_back(last_mm: Decimal, sd_mm: Decimal | None) -> AskedBack:
     """last_mm : the last size; sd_mm : the sizing error of its method, None where not known"""
     allowed = Decimal(0) if sd_mm is None else sd_mm * BY_CHANCE
     return AskedBack(last_mm / SLIPPED, last_mm * SLIPPED, last_mm - allowed)
+
+
+def counter_asked_above(last: Decimal, per_day: Decimal, days: int) -> Decimal:
+    """The reading above which the counter is asked back.
+
+    last : the last reading; per_day : counts a day; days : since the last look
+    """
+    return last + JUMP * (max(days, 0) + 30) * per_day

@@ -11,7 +11,7 @@ from typing import Any, TypeVar
 from logbook.errors import invalid
 
 from . import text
-from .asked_back import asked_back
+from .asked_back import asked_back, counter_asked_above
 from .draft import FindingDraft, InspectionDraft, NewLocation, Sizes
 from .known import Known, KnownCrack, KnownLocation
 
@@ -148,10 +148,6 @@ def _check_counter(r: _Reader, head: dict[str, Any], known: Known) -> None:
         )
 
 
-# A reading this many times what the days since the last one explain looks like a slipped digit.
-JUMP = Decimal(20)
-
-
 def _check_jump(r: _Reader, head: dict[str, Any], known: Known) -> None:
     """A leap of the counter is asked back once: it would put every place out of use."""
     counter, found_on, last = head["counter"], head["found_on"], known.last_counter
@@ -159,8 +155,8 @@ def _check_jump(r: _Reader, head: dict[str, Any], known: Known) -> None:
         return
     if known.per_day is None or known.last_found_on is None:
         return
-    days = max((found_on - known.last_found_on).days, 0) + 30
-    explained = last + JUMP * days * known.per_day
+    days = (found_on - known.last_found_on).days
+    explained = counter_asked_above(last, known.per_day, days)
     if counter > explained and r.data.get("confirm_counter") not in CONFIRMED:
         r.complain(
             "counter",

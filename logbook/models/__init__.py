@@ -33,6 +33,14 @@ from .record import Record
 from .repair import Repair, ReturnToService
 from .site import Site
 from .standing import Standing
+from .tablet import (
+    Device,
+    PhotoLayer,
+    RoundDeclared,
+    SentFromTablet,
+    StopNote,
+    TabletRules,
+)
 from .tray import TrayItem, TraySettled
 
 __all__ = [
@@ -47,6 +55,7 @@ __all__ = [
     "Deferral",
     "DeferralRequest",
     "DepthBasis",
+    "Device",
     "Disposition",
     "Finding",
     "Head",
@@ -60,6 +69,7 @@ __all__ = [
     "NameBeside",
     "Person",
     "Photo",
+    "PhotoLayer",
     "ProtectedModel",
     "Record",
     "Repair",
@@ -67,9 +77,13 @@ __all__ = [
     "ReturnToService",
     "Review",
     "Role",
+    "RoundDeclared",
+    "SentFromTablet",
     "Site",
     "Standing",
+    "StopNote",
     "StrikeOut",
+    "TabletRules",
     "TrayItem",
     "TraySettled",
     "UnsignedPolicy",

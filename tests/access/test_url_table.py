@@ -48,6 +48,8 @@ class Rule:
 
 # Addresses without an object of a site: what they show is scoped, and tested with the pages.
 OPEN = Rule(None)
+# Pages that hold nothing of anybody: a tablet keeps them, whoever has it in hand.
+PUBLIC = ("tablet", "tablet-worker", "tablet-manifest")
 UNSCOPED = (
     "today",
     "sign-in",
@@ -69,6 +71,8 @@ UNSCOPED = (
     "api-assessments",
     "api-inspections",
     "api-records",
+    "tablet-me",
+    *PUBLIC,
 )
 RULES: dict[str, Rule] = dict.fromkeys(UNSCOPED, OPEN) | {
     "record": Rule(ALL, ("record",)),
@@ -117,6 +121,11 @@ RULES: dict[str, Rule] = dict.fromkeys(UNSCOPED, OPEN) | {
     "api-strike-out": Rule(frozenset(), ("finding",)),
     "api-photo": Rule(ALL, ("photo",)),
     "api-record-pdf": Rule(ALL, ("record",)),
+    "tablet-register": Rule(frozenset(), ("site",)),
+    "tablet-package": Rule(frozenset(), ("site",)),
+    "tablet-send": Rule(frozenset(), ("site", "sort")),
+    "tablet-answer": Rule(ALL, ("key",)),
+    "tablet-photo": Rule(LOG, ("photo",)),
 }  # fmt: skip
 
 
@@ -170,6 +179,7 @@ def ids(transactional_db: None) -> dict[str, Any]:
         "review": waiting.pk, "disposition": signed.pk, "record": signed.record.number,
         "deferral": asked.pk, "repair": repair.pk, "tray": item.pk, "photo": photo.pk,
         "material": Material.objects.get().pk, "basis": book.heel.bases.get().pk,
+        "key": inspection.key, "sort": "entry",
         "site": book.site.slug, "licence": book.licence.pk,
         "membership": Membership.objects.filter(person=crew).get().pk,
     }  # fmt: skip
@@ -219,7 +229,7 @@ def test_nobody_is_asked_to_sign_in(ids: dict[str, Any]) -> None:
     before = Leaf.objects.count()
     client = Client(raise_request_exception=False)
     for name, rule in RULES.items():
-        if name in ("sign-in", "look"):
+        if name in ("sign-in", "look", *PUBLIC):
             continue
         where = address(name, ids) if rule.sees is not None else reverse(name)
         for answer in (client.get(where), client.post(where, {})):

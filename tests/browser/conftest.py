@@ -29,6 +29,18 @@ def book(transactional_db: None) -> Book:
 @pytest.fixture
 def opened(browser: Browser, live_server: Any) -> Iterator[Callable[..., Page]]:
     """A page for one person at one width; whatever the console complains of fails the test."""
+    yield from _opener(browser, live_server, ("status of 4",))
+
+
+@pytest.fixture
+def tablet(browser: Browser, live_server: Any) -> Iterator[Callable[..., Page]]:
+    """The same, where the signal comes and goes: that the network is gone is no complaint."""
+    yield from _opener(browser, live_server, ("status of 4", "net::ERR_"))
+
+
+def _opener(
+    browser: Browser, live_server: Any, expected: tuple[str, ...]
+) -> Iterator[Callable[..., Page]]:
     contexts: list[BrowserContext] = []
     complaints: list[str] = []
 
@@ -40,7 +52,8 @@ def opened(browser: Browser, live_server: Any) -> Iterator[Callable[..., Page]]:
             "console",
             lambda said: (
                 complaints.append(said.text)
-                if said.type in ("error", "warning") and "status of 4" not in said.text
+                if said.type in ("error", "warning")
+                and not any(one in said.text for one in expected)
                 else None
             ),
         )
