@@ -175,7 +175,7 @@ def _attachments(content: RecordContent, fetcher: OnlyOurs) -> list[Attachment]:
 
 
 def _given(content: RecordContent) -> dict[str, tuple[bytes, str]]:
-    given = {f"record:font/{name}": (body, "font/woff2") for name, body in _fonts().items()}
+    given = dict(fonts_given())
     if content.part.picture is not None:
         given["record:picture"] = (content.part.picture.jpeg, "image/jpeg")
     for photo in content.photos:
@@ -185,18 +185,22 @@ def _given(content: RecordContent) -> dict[str, tuple[bytes, str]]:
 
 
 @cache
-def _fonts() -> dict[str, bytes]:
-    """The faces of the pages, by file name."""
+def fonts_given() -> dict[str, tuple[bytes, str]]:
+    """The faces of the pages, by the names that ``faces`` asks for them."""
     folder = resources.files("logbook") / "static" / "logbook" / "fonts"
-    return {name: (folder / name).read_bytes() for name in FONTS}
+    return {f"record:font/{name}": ((folder / name).read_bytes(), "font/woff2") for name in FONTS}
 
 
-@cache
-def _style() -> str:
-    faces = "".join(
+def faces() -> str:
+    """The style that brings the faces in."""
+    return "".join(
         f'@font-face {{ font-family: "{family}"; font-weight: {weight};'
         f' src: url("record:font/{name}") format("woff2") }}\n'
         for name, (family, weight) in FONTS.items()
     )
+
+
+@cache
+def _style() -> str:
     sheet = resources.files("logbook") / "templates" / "logbook" / "records" / "record.css"
-    return faces + sheet.read_text(encoding="utf-8")
+    return faces() + sheet.read_text(encoding="utf-8")

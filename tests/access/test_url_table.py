@@ -4,6 +4,7 @@ The table below names every address of the application. A new one without a rule
 """
 
 import io
+import uuid
 from collections.abc import Iterator
 from dataclasses import dataclass
 from hashlib import sha256
@@ -21,6 +22,7 @@ from logbook.actions.record_repair import record_repair
 from logbook.actions.review import review
 from logbook.actions.shown import shown_digest
 from logbook.actions.sign_disposition import sign_disposition
+from logbook.actions.tablets import register_tablet
 from logbook.actions.tray import keep_in_tray
 from logbook.errors import Refusal
 from logbook.models import Assessment, Leaf, Material, Membership, Photo, Role
@@ -121,6 +123,11 @@ RULES: dict[str, Rule] = dict.fromkeys(UNSCOPED, OPEN) | {
     "api-strike-out": Rule(frozenset(), ("finding",)),
     "api-photo": Rule(ALL, ("photo",)),
     "api-record-pdf": Rule(ALL, ("record",)),
+    "tablets": Rule(ALL, ("site",)),
+    "tablet-rules": Rule(ADMIN, ("site",)),
+    "tablet-file": Rule(LOG, ("site",)),
+    "revoke-tablet": Rule(frozenset(), ("site", "tablet")),
+    "labels": Rule(ALL, ("site",)),
     "tablet-register": Rule(frozenset(), ("site",)),
     "tablet-package": Rule(frozenset(), ("site",)),
     "tablet-send": Rule(frozenset(), ("site", "sort")),
@@ -172,6 +179,7 @@ def ids(transactional_db: None) -> dict[str, Any]:
         done_by="shop", work_order="W", done_on=clock.today("UTC"), counter=1000,
         inspection_after="nothing found", closes=True,
     )  # fmt: skip
+    tablet = register_tablet(crew, book.site, key=uuid.uuid4(), name="tablet 3")
     item = keep_in_tray(crew, book.gate, "k", {"a": 1}, Refusal("x", "why"))
     return {
         "book": book, "component": book.gate.pk, "location": book.heel.pk, "inspection":
@@ -179,7 +187,7 @@ def ids(transactional_db: None) -> dict[str, Any]:
         "review": waiting.pk, "disposition": signed.pk, "record": signed.record.number,
         "deferral": asked.pk, "repair": repair.pk, "tray": item.pk, "photo": photo.pk,
         "material": Material.objects.get().pk, "basis": book.heel.bases.get().pk,
-        "key": inspection.key, "sort": "entry",
+        "key": inspection.key, "sort": "entry", "tablet": tablet.pk,
         "site": book.site.slug, "licence": book.licence.pk,
         "membership": Membership.objects.filter(person=crew).get().pk,
     }  # fmt: skip

@@ -4,7 +4,7 @@ import { exportWaiting } from "./export.js";
 import { complaints, headPage } from "./head.js";
 import { placePage } from "./place.js";
 import { close, index, partPage, round } from "./round.js";
-import { scan } from "./scan.js";
+import { partOf as onLabel, scan } from "./scan.js";
 import { load, me, sendAll, Unsent, wipe } from "./send.js";
 import { at, isWaiting, keep, note, part as partOf, place as placeOf, recall, refresh, witness } from "./state.js";
 import { judge } from "./stop.js";
@@ -335,6 +335,11 @@ async function wipeOld() {
 }
 
 async function start() {
+  // Another page that could not be had without signal: of a part it is shown what is here.
+  if (location.pathname !== "/tablet/") {
+    const id = onLabel(location.pathname);
+    history.replaceState(null, "", id ? `/tablet/#/part/${id}` : "/tablet/#/");
+  }
   document.documentElement.dataset.look = localStorage.getItem("look") ?? "day";
   const before = witness();
   const id = await store.identity();

@@ -1,6 +1,7 @@
 // The round: one line a place in walking order; what was skipped gathers at the end; its last line
 // closes the round.
 
+import { partOf as onLabel } from "./scan.js";
 import { at, isWaiting, part as partOf, places, seenAt } from "./state.js";
 import { counted, onDay, today, WHAT } from "./words.js";
 import { button, entered, field, h, leaf, line, mark, s, to } from "./ui.js";
@@ -79,7 +80,7 @@ export function index(act) {
   const said = h("p", { role: "status" });
   const find = (text) => {
     const bare = text.trim().toLowerCase();
-    const found = at.pack.components.find((one) => one.tag.toLowerCase() === bare);
+    const found = partOf(onLabel(bare)) ?? at.pack.components.find((one) => one.tag.toLowerCase() === bare);
     if (found) act.go(`#/part/${found.id}`);
     else said.replaceChildren(`No part ${text.trim() || "without a number"} is on this tablet.`);
   };

@@ -2,11 +2,8 @@
 
 import { button, h } from "./ui.js";
 
-// The last piece of the address on a label is the component's number in the book.
-export const tagOf = (text) => {
-  const found = /\/tablet\/#\/index\?tag=([^&]+)$/.exec(text);
-  return found ? decodeURIComponent(found[1]) : text;
-};
+// A label holds the address of its part; anything else is read as a number on the part.
+export const partOf = (text) => /\/component\/(\d+)\/?$/.exec(text)?.[1] ?? null;
 
 export async function scan(box, found, said) {
   let stream;
@@ -31,7 +28,7 @@ export async function scan(box, found, said) {
     const [code] = await reader.detect(video).catch(() => []);
     if (code) {
       end();
-      found(tagOf(code.rawValue));
+      found(code.rawValue);
     } else {
       await new Promise((resolve) => setTimeout(resolve, 200));
     }
