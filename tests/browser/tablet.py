@@ -21,13 +21,20 @@ TOOLS = {
 }
 
 
+# The page's policy forbids the polling of strings, so the page itself waits.
+CONTROLLED = """() => new Promise((told) => {
+  if (navigator.serviceWorker.controller) told();
+  navigator.serviceWorker.addEventListener("controllerchange", () => told());
+})"""
+
+
 def loaded(tablet: Callable[..., Page], who: str = "crew", **more: Any) -> Page:
     """The tablet's page with the round on it and its worker in charge."""
     page = tablet(who, **more)
     page.goto("/tablet/")
     page.evaluate("navigator.serviceWorker.ready")
     page.reload()
-    page.wait_for_function("navigator.serviceWorker.controller !== null")
+    page.evaluate(CONTROLLED)
     expect(page.get_by_text("As the book stood at")).to_be_visible()
     return page
 

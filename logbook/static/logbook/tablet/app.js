@@ -52,8 +52,9 @@ const act = {
   },
   async round(taken) {
     if (!at.person) return act.go("#/who");
+    const where = location.hash;
     await keep({ round: taken ? { key: taken.key, begun: taken.begun } : { key: crypto.randomUUID(), begun: moment() } });
-    return show();
+    return where === location.hash ? show() : undefined;
   },
   async putDown() {
     await keep({ round: null });
@@ -279,11 +280,14 @@ async function head(part, then) {
   return headPage(act, part, tools, here);
 }
 
+let turn = 0;
 async function show(moved = true) {
+  const mine = (turn += 1);
   const hash = location.hash || "#/";
   const [pattern, tab, page] = routes.find(([one]) => one.test(hash)) ?? routes.at(-1);
   const made = await page(...(pattern.exec(hash)?.slice(1) ?? []));
-  put(made, moved, tab);
+  // Another leaf was opened meanwhile.
+  if (mine === turn) put(made, moved, tab);
 }
 
 function put(made, moved = true, tab = "round") {

@@ -28,6 +28,12 @@ const mayLack = (name, tools) =>
   (name === "calibration_valid_until" && ["none", "eye"].includes(bare(tools.instrument))) ||
   (name === "qualification_valid_until" && ["none", "no"].includes(bare(tools.qualification_level)));
 
+// A clock that is behind must not stop anyone from writing: the server's own day counts too.
+function latestDay() {
+  const loaded = at.pack?.made_at.slice(0, 10) ?? "";
+  return loaded > today() ? loaded : today();
+}
+
 export function complaints(tools, here, part) {
   const said = {};
   for (const [name, , , sentence] of [...TOOLS, ...HERE]) {
@@ -35,7 +41,7 @@ export function complaints(tools, here, part) {
     if (!bare(from[name]) && !mayLack(name, tools)) said[name] = sentence;
   }
   if (!here.found_on) said.found_on = "Say on which day you looked.";
-  else if (here.found_on > today()) said.found_on = `${onDay(here.found_on)} is in the future. Check the date.`;
+  else if (!at.clock && here.found_on > latestDay()) said.found_on = `${onDay(here.found_on)} is in the future. Check the date.`;
   else if (part.last_found_on && here.found_on < part.last_found_on && !bare(here.late_why)) {
     said.late_why = `The last look here was on ${onDay(part.last_found_on)}. If this one really was earlier, say why it is written only now.`;
   }
