@@ -45,7 +45,7 @@ def _opener(
     complaints: list[str] = []
 
     def open_as(name: str, width: str = "tablet", **more: Any) -> Page:
-        context = browser.new_context(base_url=live_server.url, **WIDTHS[width], **more)
+        context = browser.new_context(base_url=live_server.url, **{**WIDTHS[width], **more})
         contexts.append(context)
         page = context.new_page()
         page.on(

@@ -5,7 +5,7 @@ from typing import Any
 
 from playwright.sync_api import Page, expect
 
-from tests.pages.book import Book
+from tests.pages.book import PASSWORD, Book
 
 TOOLS = {
     "How you looked": "ultrasound",
@@ -39,15 +39,21 @@ def loaded(tablet: Callable[..., Page], who: str = "crew", **more: Any) -> Page:
     return page
 
 
-def begin(page: Page, book: Book, counter: str = "1200") -> None:
-    page.get_by_role("link", name="Round", exact=True).click()
-    page.get_by_role("button", name="Begin a round").click()
-    page.get_by_role("link", name="1 · Heel post, upper weld").click()
+def begin(
+    page: Page, book: Book, counter: str = "1200", *, until_head: bool = False, begun: bool = False
+) -> None:
+    """Begin a round and answer what is asked before the look."""
+    if not begun:
+        page.get_by_role("link", name="Round", exact=True).click()
+        page.get_by_role("button", name="Begin a round").click()
+        page.get_by_role("link", name="1 · Heel post, upper weld").click()
     page.get_by_role("button", name="today, ").click()
     page.get_by_label("Counter reading").fill(counter)
     for label, value in TOOLS.items():
         page.get_by_label(label, exact=True).fill(value)
-    page.get_by_role("button", name="Go to the places").click()
+    if not until_head:
+        page.get_by_role("button", name="Go to the places").click()
+        expect(page.get_by_text("What do you see here?")).to_be_visible()
 
 
 def type_size(page: Page, size: str) -> None:
@@ -55,3 +61,17 @@ def type_size(page: Page, size: str) -> None:
         page.get_by_role(
             "button", name="decimal sign" if digit == "." else digit, exact=True
         ).click()
+
+
+def send_now(page: Page) -> None:
+    page.goto("/tablet/#/send")
+    page.get_by_role("button", name="Send now").click()
+
+
+def sign_in(page: Page, name: str, *, there: bool = False) -> None:
+    if not there:
+        page.goto("/sign-in/")
+    page.get_by_label("Sign-in name").fill(name)
+    page.get_by_label("Password").fill(PASSWORD)
+    page.get_by_role("main").get_by_role("button", name="Sign in").click()
+    page.wait_for_url("**/tablet/" if there else "**/")

@@ -359,7 +359,8 @@ class Run:
         for key, photo in self.acknowledged.items():
             self.count.acknowledged += 1
             rows = self.served.ask(
-                "SELECT i.id, (SELECT count(*) FROM logbook_finding f WHERE f.inspection_id = i.id),"
+                "SELECT i.id,"
+                " (SELECT count(*) FROM logbook_finding f WHERE f.inspection_id = i.id),"
                 " (SELECT count(*) FROM logbook_sentfromtablet s WHERE s.inspection_id = i.id)"
                 " FROM logbook_inspection i WHERE i.key = ?",
                 [key.replace("-", "")],

@@ -24,7 +24,7 @@ FAULTS = (CUT_REQUEST, CUT_REPLY, DELAY, DUPLICATE, LATE)
 
 @dataclass
 class Proxy:
-    """Listens on ``port`` and forwards to ``server``; what ``plan`` holds befalls the next sends."""
+    """Forwards from ``port`` to ``server``; what ``plan`` holds befalls the next sends."""
 
     server: int
     chance: random.Random

@@ -31,7 +31,7 @@ const act = {
       if (!slug) return act.go("#/site");
       const refused = await load(slug, session);
       await keep({ site: slug, ...(at.person ? {} : { person: await asPerson(slug, session) }) });
-      if (refused) fault(refused.title);
+      at.said = refused?.title ?? "";
       await room();
       return show();
     });
@@ -191,14 +191,20 @@ function unsent(gone) {
 }
 
 let sendingNow = false;
+let onceMore = false;
 async function send(asked = false) {
-  if (sendingNow) return;
+  if (sendingNow) {
+    onceMore ||= asked;
+    return;
+  }
   sendingNow = true;
   try {
     const report = await sendAll(async () => {
       await refresh();
       status();
     });
+    // Another tab or the worker sends: look again when it is through.
+    if (report.busy) setTimeout(() => send(true), 500);
     if (report.person) {
       at.session = report.person;
       at.signal = { ok: true };
@@ -214,6 +220,10 @@ async function send(asked = false) {
     await askWorker();
   } finally {
     sendingNow = false;
+    if (onceMore) {
+      onceMore = false;
+      void send(true);
+    }
   }
 }
 
@@ -237,7 +247,9 @@ async function verdicts() {
 
 const open = {};
 // Somebody is writing: nothing is redrawn under their hands.
-const busy = () => /^#\/(place|new|head|close|index)/.test(location.hash);
+const busy = () =>
+  /^#\/(place|new|head|close|index)/.test(location.hash) ||
+  [...main.querySelectorAll("input, textarea")].some((one) => one.value || one === document.activeElement);
 
 const routes = [
   [/^#\/round$/, "round", () => round(act)],
@@ -307,7 +319,7 @@ function put(made, moved = true, tab = "round") {
 
 function status() {
   const n = at.outbox.filter(isWaiting).length;
-  document.getElementById("waits").replaceChildren(n ? ` (${n})` : "");
+  document.getElementById("waits").replaceChildren(n ? `\u00a0(${n})` : "");
   document.getElementById("where").replaceChildren(h("li", {}, h("b", {}, at.pack?.site.name ?? "Crack logbook")));
   document.getElementById("hand").replaceChildren(`${atTime(Date.now())}${at.person ? ` · ${at.person.name}` : ""}`);
   const line = document.getElementById("state");
@@ -315,10 +327,6 @@ function status() {
   const why = { "no-signal": "no signal", "no-answer": "the book did not answer", "sign-in": "sign in to send" }[at.signal?.why];
   const said = `${words}${at.signal && !at.signal.ok ? ` · ${why}` : ""}.`;
   if (line.textContent !== said) line.replaceChildren(said);
-}
-
-function fault(sentence) {
-  main.prepend(h("div", { class: "summary", role: "alert" }, h("p", {}, sentence)));
 }
 
 // ---- the store ----
@@ -357,6 +365,7 @@ async function start() {
   document.addEventListener("visibilitychange", () => document.visibilityState === "visible" && send());
   setInterval(() => send(), AGAIN);
   await show();
+  performance.mark("usable");
   document.documentElement.dataset.ready = "yes";
   if ("serviceWorker" in navigator) await navigator.serviceWorker.register("/worker.js", { type: "module", scope: "/" });
   await navigator.storage?.persist?.();

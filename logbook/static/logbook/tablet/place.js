@@ -181,11 +181,12 @@ function sizes(place, draft, draw) {
   show();
   const boxes = measured ? [depth.input, length.input] : [length.input];
   return [
-    measured ? depth.made : h("p", {}, "Depth: not measured"),
-    length.made,
-    both,
-    scale.box,
-    keypad(boxes, sign, extra, () => compare(place, draft, draw)),
+    h(
+      "div",
+      { class: "sizing" },
+      h("div", {}, h("div", { class: "pair-of-sizes" }, measured ? depth.made : h("p", {}, "Depth: not measured"), length.made), both, scale.box),
+      keypad(boxes, sign, extra, () => compare(place, draft, draw)),
+    ),
     draft.compared && lastSize(place, draft, draw),
   ];
 }

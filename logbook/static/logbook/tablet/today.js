@@ -12,6 +12,7 @@ export function today(act) {
     "On this tablet",
     { kind: "single wide" },
     at.lost && lostStore(act),
+    at.said && h("div", { class: "summary", role: "alert" }, h("p", {}, at.said)),
     h("ul", { class: "held" }, heldLines().map((one) => line(...[one].flat()))),
     !at.pack && sites(act),
     at.pack && h("h2", {}, at.pack.site.name),
