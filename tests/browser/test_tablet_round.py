@@ -354,6 +354,30 @@ def test_what_waits_of_someone_whose_role_ended_is_kept(
     expect(page.get_by_text("in the tray: a person decides")).to_be_visible()
 
 
+def test_a_colleague_hands_in_what_someone_without_a_role_left_behind(
+    book: Book, tablet: Callable[..., Page]
+) -> None:
+    page = loaded(tablet)
+    page.context.set_offline(True)
+    begin(page, book)
+    nothing_found(page, book.toe.pk)
+    page.context.clear_cookies()
+    page.context.set_offline(False)
+    sign_in(page, "engineer")
+    page.goto("/tablet/")
+    send_now(page)
+    hand_in = page.get_by_role("button", name="They have no role here any more: hand them in")
+    hand_in.click()
+    # The author still has the role: it goes on waiting for that person.
+    expect(page.get_by_text("1 of these were written by someone else")).to_be_visible()
+    assert not TrayItem.objects.exists()
+    Membership.objects.filter(person=book.people["crew"]).update(ended_at=clock.now())
+    hand_in.click()
+    expect(page.get_by_text("in the tray: a person decides")).to_be_visible()
+    assert TrayItem.objects.get().author == book.people["engineer"]
+    assert not Inspection.objects.exists()
+
+
 def test_what_waits_is_saved_to_a_file_that_the_book_takes(
     book: Book, tablet: Callable[..., Page], tmp_path: Path
 ) -> None:

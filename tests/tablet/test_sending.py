@@ -214,6 +214,22 @@ def test_a_photo_comes_in_pieces_and_goes_on_where_it_stopped(
     assert json.loads(PhotoLayer.objects.get().marks) == [["arrow", 10, 20, 30, 40]]
 
 
+def test_the_entry_s_page_shows_what_the_tablet_showed_and_the_mark_over_the_photo(
+    as_: Callable[[str], Client], book: Book, device: Device, sent: Sent, send: Send
+) -> None:
+    data = jpeg(400)
+    digest = sha256(data).hexdigest()
+    seen = crack_seen(book.heel, "3", "12") | {"photos": [digest]}
+    said = send(sent(seen, layers={digest: [["circle", 5000, 5000, 6000, 7000]]})).json()
+    crew = as_("crew")
+    where = f"/api/v1/tablet/photo/{said['photos'][digest]['id']}?start=0&whole={len(data)}"
+    crew.put(where, data, "application/octet-stream")
+    page = crew.get(f"/inspection/{said['inspection']}/").content.decode()
+    assert "No verdict yet." in page
+    assert "tablet 3" in page
+    assert 'class="layer" d="M40.0 50.0a10.0 20.0' in page
+
+
 def test_pieces_that_make_another_photo_are_thrown_away(
     as_: Callable[[str], Client], book: Book, sent: Sent, send: Send
 ) -> None:

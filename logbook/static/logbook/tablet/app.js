@@ -113,6 +113,13 @@ const act = {
     await scan(document.getElementById("camera"), found, said);
   },
   send: () => send(true),
+  // The server looks whether that is so, and puts them in the tray; else they go on waiting.
+  async handIn() {
+    for (const item of at.outbox.filter((one) => isWaiting(one) && one.person !== at.session.id)) {
+      await store.change(item.seq, isWaiting, { handIn: true });
+    }
+    await send(true);
+  },
   async exportFile() {
     if (await exportWaiting()) note({ exported: moment() });
   },

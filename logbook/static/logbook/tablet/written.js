@@ -104,7 +104,10 @@ export function sending(act) {
     { kind: "single wide" },
     h("p", { role: "status" }, waiting.length ? `${waiting.length} on this tablet only. They go by themselves, oldest first.` : "Nothing waits to be sent."),
     at.signal?.why === "sign-in" && h("div", { class: "doing" }, h("a", { class: "button main", href: "/sign-in/?next=/tablet/" }, "Sign in to send")),
-    others.length > 0 && h("p", {}, `${others.length} of these were written by someone else and wait for their own sign-in.`),
+    others.length > 0 && [
+      h("p", {}, `${others.length} of these were written by someone else and wait for their own sign-in.`),
+      h("div", { class: "doing" }, button("They have no role here any more: hand them in", act.handIn)),
+    ],
     h("div", { class: "doing" }, button("Send now", act.send), button("Save what waits to a file", act.exportFile), to("who writes", "#/who")),
     h(
       "ol",
