@@ -33,5 +33,12 @@ def answer_now(act: uuid.UUID) -> bool:
     return done
 
 
+def answer_later(act: uuid.UUID) -> None:
+    """Leave what this act asked to the worker: more entries are right behind it."""
+    owed = AssessmentAsked.objects.filter(because_act=act).order_by("pk")
+    for location, crack in owed.values_list("location_id", "crack_id"):
+        propose_one.enqueue(location, crack)
+
+
 def _owed(location: int, crack: int | None) -> bool:
     return AssessmentAsked.objects.filter(location=location, crack=crack).exists()

@@ -33,12 +33,18 @@ class Taken:
 
 
 def take_in(
-    by: Person, data: Mapping[str, Any], *, keep: bool, write: Write = log_inspection
+    by: Person,
+    data: Mapping[str, Any],
+    *,
+    keep: bool,
+    write: Write = log_inspection,
+    answer: Callable[[uuid.UUID], object] = answer_now,
 ) -> Taken:
     """Read and write a sent entry, and work out its verdict while there is time.
 
     keep : what does not fit goes to the tray instead of being refused
     write : the action that writes the draft
+    answer : what sees to the verdict once the entry is in the book
 
     Raises Refusal: not-found and not-permitted always; "same-key-other-content" (both kept);
     what does not fit, unless it is kept.
@@ -62,7 +68,7 @@ def take_in(
             raise
         item = keep_in_tray(by, component, str(draft.key), dict(data), refusal)
         return Taken(refusal=refusal, kept=item.pk)
-    answer_now(inspection.leaf_id)
+    answer(inspection.leaf_id)
     return Taken(inspection, again=again)
 
 

@@ -12,6 +12,7 @@ from typing import Any
 from django.db import transaction
 
 from logbook import access, clock
+from logbook.actions.answer import answer_later, answer_now
 from logbook.actions.log_inspection import log_inspection
 from logbook.actions.tablets import tablet_for
 from logbook.actions.take_in import Taken, take_in
@@ -39,13 +40,16 @@ LONGEST = 20_000
 SHAPES = ("arrow", "circle")
 
 
-def take_in_from_tablet(by: Person, site: Site, sent: Mapping[str, Any]) -> Taken:
+def take_in_from_tablet(
+    by: Person, site: Site, sent: Mapping[str, Any], *, more: bool = False
+) -> Taken:
     """Take in one entry.
 
     site : where it was written; by logs there, or once did
     sent : ``person`` (who wrote it), ``tablet`` (its key), ``entry`` (as the API takes it), and
         what goes beside it: ``round``, ``shown``, ``layers`` (SHA-256 to marks), ``spot`` (where a
         new place is on the picture)
+    more : further entries wait behind this one, so that its verdict is left to the worker
 
     Raises Refusal: "other-person" where the person who is signed in did not write it.
     """
@@ -71,7 +75,8 @@ def take_in_from_tablet(by: Person, site: Site, sent: Mapping[str, Any]) -> Take
             # Once more outside: what it puts in the tray must stay there.
             return log_inspection(person, draft)
 
-    return take_in(by, whole, keep=True, write=write)
+    answer = answer_later if more else answer_now
+    return take_in(by, whole, keep=True, write=write, answer=answer)
 
 
 def _not_in_own_name(

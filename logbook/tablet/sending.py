@@ -90,7 +90,7 @@ class Send(TabletView):
         person, data = who(request), sent(request)
         site = access.site_once_for(person, slug)
         if kind == "entry":
-            return self._entry(person, site, data)
+            return self._entry(person, site, data, "more" in request.query_params)
         if kind == "stop-note":
             note = note_stop(person, site, data)
             return Response({"key": note.key, "entry_number": note.entry_number})
@@ -99,11 +99,11 @@ class Send(TabletView):
             return Response({"key": made.key, "entry_number": made.entry_number})
         raise invalid("A tablet sends an entry, a stop-note or a round.", {})
 
-    def _entry(self, person: Person, site: Site, data: Mapping[str, Any]) -> Response:
+    def _entry(self, person: Person, site: Site, data: Mapping[str, Any], more: bool) -> Response:
         entry = data.get("entry")
         key = entry.get("key") if isinstance(entry, dict) else None
         try:
-            taken = take_in_from_tablet(person, site, data)
+            taken = take_in_from_tablet(person, site, data, more=more)
         except Refusal as refusal:
             if refusal.code != "same-key-other-content":
                 raise

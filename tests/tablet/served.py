@@ -37,10 +37,13 @@ class Served:
     data: Path
     port: int
     process: subprocess.Popen[bytes] | None = None
+    # Whether LOGBOOK_DATABASE counts; else the book is in the data folder.
+    keep_database: bool = False
 
     @property
     def env(self) -> dict[str, str]:
-        own = {name: value for name, value in os.environ.items() if name != "LOGBOOK_DATABASE"}
+        left_out = () if self.keep_database else ("LOGBOOK_DATABASE",)
+        own = {name: value for name, value in os.environ.items() if name not in left_out}
         return own | {
             "LOGBOOK_DATA": str(self.data),
             "LOGBOOK_MODE": "trial",
@@ -49,6 +52,13 @@ class Served:
 
     def make(self) -> None:
         subprocess.run([sys.executable, "-c", MAKE], env=self.env, check=True)
+
+    def run(self, code: str) -> str:
+        """What a piece of code prints in the served book."""
+        ran = subprocess.run(
+            [sys.executable, "-c", code], env=self.env, check=True, capture_output=True, text=True
+        )
+        return ran.stdout
 
     def start(self) -> None:
         log = (self.data / "server.log").open("ab")

@@ -7,12 +7,15 @@ from hashlib import sha256
 from typing import Any
 
 from django.test import Client
+from django_tasks_db.models import DBTaskResult
 
 from logbook import clock
 from logbook.actions.add_photo import photos_path
+from logbook.actions.propose import propose
 from logbook.actions.tablets import revoke_tablet
 from logbook.journal.verify import verify
 from logbook.models import (
+    AssessmentAsked,
     Device,
     Inspection,
     Leaf,
@@ -82,6 +85,22 @@ def test_what_does_not_fit_is_kept_whole_and_echoed(book: Book, sent: Sent, send
     kept = json.loads(TrayItem.objects.get().content)
     assert kept["findings"][0]["depth_mm"] == "84"
     assert kept["tablet"]["shown"] == data["shown"]
+
+
+def test_with_more_behind_it_an_entry_does_not_wait_for_its_verdict(
+    as_: Callable[[str], Client], sent: Sent
+) -> None:
+    data = sent()
+    answer = as_("crew").post("/api/v1/tablet/lower-mill/send/entry?more", data, "application/json")
+    assert answer.json()["pending"] is True
+    assert answer.json()["verdicts"] == []
+    # It is owed and queued: a worker gives it, and the tablet asks for it.
+    assert AssessmentAsked.objects.count() == DBTaskResult.objects.count() == 1
+    for asked in AssessmentAsked.objects.all():
+        propose(asked.location_id, asked.crack_id)
+    later = as_("crew").get(f"/api/v1/tablet/answer/{data['entry']['key']}").json()
+    assert later["pending"] is False
+    assert later["verdicts"][0]["word"]
 
 
 def test_nobody_s_entries_go_as_another_s(sent: Sent, send: Send) -> None:

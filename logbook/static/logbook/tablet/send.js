@@ -81,14 +81,14 @@ export function sendAll(told = () => {}) {
     if (!items.length) return { sent: 0, left: 0 };
     const session = await me();
     const report = { person: session.person, sent: 0, others: 0 };
-    for (const { seq } of items) {
+    for (const [n, { seq }] of items.entries()) {
       const item = await store.read("outbox", seq);
       if (!item || !WAITS(item)) continue;
       if (item.person !== session.person.id && !item.handIn) {
         report.others += 1;
         continue;
       }
-      if (item.state === "waiting") await sendOne(item, session, report);
+      if (item.state === "waiting") await sendOne(item, session, report, n + 1 < items.length);
       const now = await store.read("outbox", seq);
       if (now?.state === "photos") await sendPhotos(now, session);
       told(report);
@@ -98,16 +98,18 @@ export function sendAll(told = () => {}) {
   });
 }
 
-async function sendOne(item, session, report) {
+// more: others wait behind it, and are not to wait for its verdict.
+async function sendOne(item, session, report, more) {
   // From here on it may be in the book: it can be struck out, and no longer undone.
   const mine = await store.change(item.seq, WAITS, { tried_at: new Date().toISOString() });
   if (!mine) return;
   const one = await tablet();
   const sent = { ...item.body, person: item.person, tablet: one.key };
-  let { status, body } = await post(`${item.site}/send/${item.kind}`, session.csrf, sent);
+  const where = `${item.site}/send/${item.kind}${more ? "?more" : ""}`;
+  let { status, body } = await post(where, session.csrf, sent);
   if (body.code === "tablet-unknown") {
     await register(item.site, session.csrf);
-    ({ status, body } = await post(`${item.site}/send/${item.kind}`, session.csrf, sent));
+    ({ status, body } = await post(where, session.csrf, sent));
   }
   if (status === 403 && !body.key && /csrf/i.test(body.title ?? "")) throw new Unsent("no-answer");
   if ((status === 200 || status === 201) && body.key === item.key) {
