@@ -14,7 +14,8 @@ from .altered import Scaled
 
 MOST = 4.0
 """The worst factor that is tried."""
-_HALVINGS = 12
+# The factor to about one per cent.
+_HALVINGS = 7
 
 Decided = Callable[[Case], tuple[str, float | None]]
 """Verdict of a case and days of its interval, None where there is none."""

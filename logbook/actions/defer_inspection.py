@@ -1,7 +1,7 @@
 """A later date for an inspection: asked by one person, approved by another under a licence.
 
-It never passes what rule 2 gives. Rule 2 is not computed yet, so it never passes what the
-bounding life gives (rule 1), which is the strictest that is known.
+It never passes what the forecast gives (rule 2), nor what the bounding life gives (rule 1): where
+the forecast is not resolved, the bounding life alone is the strictest that is known.
 """
 
 import datetime
@@ -153,13 +153,15 @@ def latest_day(d: Disposition) -> datetime.date | None:
 
 
 def _latest(d: Disposition) -> tuple[datetime.date | None, Decimal | None]:
-    """The day and counter of rule 1 in the outcome that was signed; None where it gives none."""
+    """The earlier day and counter of rules 1 and 2 in the outcome that was signed; None where
+    rule 1 gives none."""
     if d.assessment.outcome_text is None:
         return None, None
     outcome = json.loads(d.assessment.outcome_text, parse_float=Decimal)
-    rule = outcome["rules"][0]
-    on = rule.get("on")
+    life, forecast = outcome["rules"][:2]
+    days = [datetime.date.fromisoformat(one["on"]) for one in (life, forecast) if one.get("on")]
+    counters = [Decimal(one["usage"]) for one in (life, forecast) if one.get("usage") is not None]
     return (
-        datetime.date.fromisoformat(on) if on else None,
-        Decimal(rule["usage"]) if rule.get("usage") is not None else None,
+        min(days) if life.get("on") else None,
+        min(counters) if life.get("usage") is not None else None,
     )

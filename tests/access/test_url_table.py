@@ -95,6 +95,7 @@ RULES: dict[str, Rule] = dict.fromkeys(UNSCOPED, OPEN) | {
     "basis": Rule(ALL - {Role.CREW}, ("basis",)),
     "adopt-basis": Rule(frozenset(), ("basis",)),
     "proposal": Rule(ALL, ("assessment",)),
+    "measure-next": Rule(ENGINEER, ("assessment",)),
     "sign": Rule(ALL, ("review",)),
     "signed": Rule(ALL, ("disposition",)),
     "confirm": Rule(LOG, ("disposition",)),

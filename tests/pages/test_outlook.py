@@ -10,7 +10,7 @@ from assessment import assess
 from logbook.actions.answer import answer_now
 from logbook.actions.revise_basis import adopt_basis, revise_basis
 from logbook.figures.from_outcome import size_story
-from logbook.models import Crack
+from logbook.models import Assessment, Crack
 from logbook.pages.outlook import outlook
 from tests.assessment.examples import surface
 
@@ -62,3 +62,13 @@ def test_engineers_see_it_and_the_crew_does_not(book: Book, as_: Any, settings: 
     address = f"/crack/{Crack.objects.get().pk}/"
     assert "what its history says" in as_("engineer").get(address).content.decode()
     assert "what its history says" not in as_("crew").get(address).content.decode()
+
+
+@pytest.mark.django_db(transaction=True)
+def test_what_to_measure_next_is_worked_out_for_an_engineer(book: Book, as_: Any) -> None:
+    book.log("2026-03-02", 1200, crack_seen(book.heel, "3.1", "14"))
+    address = f"/proposal/{Assessment.objects.get().pk}/measure/"
+    page = as_("engineer").get(address).content.decode()
+    assert "What to measure next" in page and "growth rate:" in page and "load:" in page
+    assert as_("crew").get(address).status_code == 403
+    assert as_("stranger").get(address).status_code == 404
