@@ -7,8 +7,8 @@ from assessment.relations import axial_through, reference_cylinders
 from assessment.validity import Floats, Mark
 
 from . import parts
+from .axial import hoop
 from .base import Body, Kind, Loads, WorkingStep
-from .cylinder_axial_inside import hoop
 
 
 def _k(x: Floats, loads: Loads, body: Body) -> Floats:
