@@ -39,6 +39,7 @@ STEP = 0.35
 CHUNK = 4096
 STEP_ERROR = 2e-3
 BRACKET = 2e-4
+COARSEST = 1e-3
 ROUNDS = 60
 MOST_STEPS = 4000
 SMALLEST = 2.0**-20
@@ -121,7 +122,7 @@ def _empty(start: Floats, usages: int) -> BatchGrowth:
 
 @dataclass
 class _State:
-    """Samples side by side: y = (x, U), what is seen there, the flags, the slope and g."""
+    """Samples side by side: y = (x, U), what is seen there, the flags and the slope."""
 
     y: Floats
     seen: Floats
@@ -176,13 +177,13 @@ class _Run:
     def _advance(self) -> None:
         before, h = self.at, self.h
         after, error = _step(self.samples, before, h)
-        end, g = self._ended(after, self.samples, self.rows)
+        end, left = self._ended(after, self.samples, self.rows)
         too_far = (error > STEP_ERROR) & (h > SMALLEST)
         flipped = np.any(_flat(after.flags != self.samples.flags(after.seen)), axis=0)
         split = np.flatnonzero(~too_far & ((end != RUNNING) | flipped))
         taken = h.copy()
         if split.size:
-            end[split], taken[split] = self._locate(after, split, g)
+            end[split], taken[split] = self._locate(after, split, left[:, split])
         if np.any(too_far):
             back = np.flatnonzero(too_far)
             after.put(back, before.take(back))
@@ -202,8 +203,8 @@ class _Run:
         self.at.put(rows, part)
 
     def _ended(self, at: _State, samples: Samples, rows: Rows) -> tuple[Ends, Floats]:
-        """The end reached at these sizes, RUNNING elsewhere; and a number that falls through nil
-        on the way there, or to a flip, NaN where there is none."""
+        """The end reached at these sizes, RUNNING elsewhere; and what is left of margin, room and
+        threshold gap, shape (3, samples), NaN out of range."""
         x = at.y[:-1]
         finite = np.all(np.isfinite(at.y), axis=0)
         safe = x if np.all(finite) else np.where(finite, x, 1.0)
@@ -218,25 +219,35 @@ class _Run:
         end[broken] = BROKEN
         at_rest = ~np.any(_flat(at.flags), axis=0)
         end[(end == RUNNING) & at_rest] = STOPPED
-        g = np.minimum(margin, samples.gap(at.seen, at.flags))
-        return end, np.where((end == OUTSIDE) | (end == BROKEN), np.nan, g)
+        left = np.stack([margin, room, samples.gap(at.seen, at.flags)])
+        # At the far wall the room is all that is known.
+        left[0::2, broken] = np.inf
+        left[:, end == OUTSIDE] = np.nan
+        return end, left
 
-    def _locate(self, after: _State, split: Rows, g_after: Floats) -> tuple[Ends, Floats]:
+    def _locate(self, after: _State, split: Rows, left: Floats) -> tuple[Ends, Floats]:
         """Put the state just beyond the first end or flip into ``after``; the end, and the way."""
         before, samples, rows = self.at.take(split), self.samples.take(split), self.rows[split]
-        _, g_low = self._ended(before, samples, rows)
+        _, whole = self._ended(before, samples, rows)
+        # Margin and room in shares of what they are at the start of the step.
+        whole[2] = 1.0
+        g_low = np.ones(split.size)
+        # The bracket is closed to a share of the life so far or of the way to the event.
+        of_life = BRACKET * before.y[-1] / before.slope[-1]
         high = self.h[split].copy()
-        low, g_high = np.zeros(split.size), g_after[split].copy()
+        low, g_high = np.zeros(split.size), np.min(left / whole, axis=0)
         side = np.zeros(split.size, dtype=int)
         best, best_low = after.take(split), before.take(np.arange(split.size))
         for _ in range(ROUNDS):
-            open_ = np.flatnonzero(high - low > BRACKET * high)
+            close = np.clip(of_life, BRACKET * high, COARSEST)
+            open_ = np.flatnonzero(high - low > close)
             if open_.size == 0:
                 break
-            h = _between(low[open_], high[open_], g_low[open_], g_high[open_])
+            h = _between(low[open_], high[open_], g_low[open_], g_high[open_], close[open_])
             part = samples.take(open_)
             tried, _ = _step(part, before.take(open_), h)
-            end, g = self._ended(tried, part, rows[open_])
+            end, left = self._ended(tried, part, rows[open_])
+            g = np.min(left / whole[:, open_], axis=0)
             beyond = (end != RUNNING) | np.any(_flat(tried.flags != part.flags(tried.seen)), axis=0)
             up, down = open_[beyond], open_[~beyond]
             high[up], g_high[up] = h[beyond], g[beyond]
@@ -297,24 +308,27 @@ def _slope(samples: Samples, x: Floats, seen: Floats, flags: Flags) -> Floats:
 
 def _step(samples: Samples, at: _State, h: Floats) -> tuple[_State, Floats]:
     """One step with frozen flags, and its error relative to size and usage."""
-    total, slope = at.slope.copy(), at.slope
-    for part, weight in ((0.5, 2.0), (0.5, 2.0), (1.0, 1.0)):
-        x = at.y[:-1] + (part * h) * slope[:-1]
-        slope = _slope(samples, x, samples.see(x), at.flags)
-        total += weight * slope
-    y = at.y + (h / 6.0) * total
+    slopes = [at.slope]
+    for part in (0.5, 0.5, 1.0):
+        x = at.y[:-1] + (part * h) * slopes[-1][:-1]
+        slopes.append(_slope(samples, x, samples.see(x), at.flags))
+    first, second, third, last = slopes
+    middle, ends = second + third, first + last
+    y = at.y + (h / 6.0) * (ends + 2.0 * middle)
     seen = samples.see(y[:-1])
     after = _State(y, seen, at.flags.copy(), _slope(samples, y[:-1], seen, at.flags))
-    # The same step with the slope at its end in place of the last stage is of order 3.
-    error = np.max(np.abs((h / 6.0) * (slope - after.slope)) / y, axis=0)
+    # The same step with the slope at its end in place of the last stage is of order 3. A rate that
+    # starts as a root or from nil, just above a threshold, shows in the bend of the slope alone.
+    off = np.maximum(np.abs(last - after.slope), np.abs(ends - middle))
+    error = np.max((h / 6.0) * off / y, axis=0)
     return after, error
 
 
-def _between(low: Floats, high: Floats, g_low: Floats, g_high: Floats) -> Floats:
+def _between(low: Floats, high: Floats, g_low: Floats, g_high: Floats, close: Floats) -> Floats:
     """Where to look next: where a straight line is nil, half-way where there is none."""
     width = high - low
     share = np.where((g_low > 0.0) & (g_high <= 0.0), g_low / (g_low - g_high), 0.5)
-    least = np.minimum(0.5 * BRACKET * high / width, 0.5)
+    least = np.minimum(0.5 * close / width, 0.5)
     return low + width * np.clip(share + 0.5 * least * np.sign(0.5 - share), least, 1.0 - least)
 
 

@@ -14,7 +14,7 @@ from numpy.typing import NDArray
 from assessment.kinds.base import Body, Kind
 from assessment.validity import Floats
 
-from .laws import GrowthLaw, threshold_at
+from .laws import GrowthLaw, TwoStage, threshold_at
 from .rates import Drive, effective_ranges, grows, k_by_load, rates_from, unstable
 
 Rows = NDArray[np.int_]
@@ -89,14 +89,27 @@ class AnySamples:
         return np.stack(effective_ranges(self.drive, unit_k, self.law, self.factor))
 
     def flags(self, seen: Floats) -> Flags:
-        return grows(seen[0], seen[1], self.law)
+        growing = grows(seen[0], seen[1], self.law).astype(np.int8)
+        if isinstance(self.law, TwoStage):
+            # Where the second stage takes over, the rate bends: a step is split there too.
+            growing += growing * (seen[0] >= self.law.crossing)
+        return growing
 
     def gap(self, seen: Floats, flags: Flags) -> Floats:
-        above = seen[0] - threshold_at(self.law, seen[1])
-        return np.asarray(np.min(np.where(flags, above, -above), axis=(0, 1)))
+        at = threshold_at(self.law, seen[1])
+        above = np.where(at > 0.0, seen[0] / at - 1.0, np.inf)
+        # Without a threshold only a crack that is pulled open starts to grow, which size alone
+        # seldom does: half-way is then as good as any place to look.
+        relative = np.where(flags > 0, above, -above)
+        left = np.where(np.isinf(relative), 1.0, relative)
+        if isinstance(self.law, TwoStage):
+            bent = seen[0] / self.law.crossing - 1.0
+            stage = np.where(flags > 1, bent, -bent)
+            left = np.minimum(left, np.where(flags > 0, stage, 1.0))
+        return np.asarray(np.min(left, axis=(0, 1)))
 
     def rates(self, seen: Floats, flags: Flags) -> Floats:
-        return rates_from(self.drive, seen[0], seen[1], self.law, flags)
+        return rates_from(self.drive, seen[0], seen[1], self.law, flags > 0)
 
     def unstable(self, seen: Floats) -> NDArray[np.bool_]:
         return unstable(seen[0], seen[1], self.law)
