@@ -1,5 +1,6 @@
 """Fatigue crack growth: laws, cycle blocks, and the run from a size to an end."""
 
+from .batch import BatchGrowth, grow_batch
 from .closure import CLOSURE, opening
 from .forman import Forman
 from .forman_mettu import FormanMettu
@@ -11,6 +12,7 @@ from .rates import rates
 __all__ = [
     "CLOSURE",
     "ENDS",
+    "BatchGrowth",
     "CycleBlock",
     "Forman",
     "FormanMettu",
@@ -21,6 +23,7 @@ __all__ = [
     "Walker",
     "cycles_per_usage",
     "grow",
+    "grow_batch",
     "opening",
     "rates",
 ]

@@ -93,7 +93,8 @@ class TwoStage:
     @property
     def crossing(self) -> float:
         """ΔK in MPa√m at which the two lines meet."""
-        return float((self.c1 / self.c2) ** (1.0 / (self.m2 - self.m1)))
+        met: float = (self.c1 / self.c2) ** (1.0 / (self.m2 - self.m1))
+        return met
 
     def effective(self, delta_k: Floats, ratio: Floats) -> Floats:
         return delta_k

@@ -55,11 +55,14 @@ def k_by_load(kind: Kind, x: Floats, names: Sequence[str], body: Body) -> Floats
     return np.moveaxis(kind.stress_intensity(x, one_each, body), 1, 0)
 
 
-def effective_ranges(drive: Drive, unit_k: Floats, law: GrowthLaw) -> tuple[Floats, Floats]:
+def effective_ranges(
+    drive: Drive, unit_k: Floats, law: GrowthLaw, factor: Floats | float = 1.0
+) -> tuple[Floats, Floats]:
     """The law's effective range and the stress ratio, each of shape (blocks, points, samples); the
-    range is nil where the crack stays shut."""
-    first = _weighed(drive.upper, unit_k)
-    second = _weighed(drive.lower, unit_k)
+    range is nil where the crack stays shut. factor : on the cyclic loads, not on residual stress,
+    a number or one for each sample"""
+    first = _weighed(drive.upper, unit_k) * factor
+    second = _weighed(drive.lower, unit_k) * factor
     if np.any(drive.residual != 0.0):
         # What presses the crack shut is not counted on (decisions: no credit where not proved).
         held = np.maximum(_weighed(drive.residual, unit_k), 0.0)
